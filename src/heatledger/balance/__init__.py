@@ -1,0 +1,1 @@
+"""The order of the steps: calls the standards, holds no formula of its own."""

@@ -1,0 +1,1 @@
+"""The building in SI units with every name resolved."""

@@ -1,0 +1,121 @@
+"""From the word under Weather to a climate: a shipped one or the user's own file."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+from difflib import get_close_matches
+from pathlib import Path
+
+from heatledger.climate.formats import read_climate
+from heatledger.climate.hourly import HourlyClimate
+from heatledger.climate.shipped import shipped_climates, shipped_file
+from heatledger.climate.sun import Site
+from heatledger.errors import InputError, Problem
+
+__all__ = ["open_climate", "shipped_climates"]
+
+LARGEST_FILE = 50_000_000
+"""A year of hours takes 2 MB; much more is something else. [byte]"""
+
+
+def open_climate(
+    weather: str,
+    folder: Path,
+    *,
+    latitude: float | None = None,
+    longitude: float | None = None,
+    time_zone: float | None = None,
+    sheet: str = "",
+    cell: str = "",
+    column: str = "Weather",
+) -> HourlyClimate:
+    """Open a shipped climate by its name or an hourly file by its path.
+
+    Parameters
+    ----------
+    weather : str
+        Name of a shipped climate, case and outer spaces ignored, or path of an EPW, TMY3 or own hourly file.
+    folder : Path
+        Folder that relative paths start from: that of the workbook.
+    latitude, longitude : float, optional
+        Used instead of the file's; north and east positive. [°]
+    time_zone : float, optional
+        Used instead of the file's: local standard time less UTC. [h]
+    sheet, cell, column : str, optional
+        Where the user named the weather; problems point there.
+
+    Raises
+    ------
+    InputError
+        With every fault of the name or of the file.
+    """
+    try:
+        path = shipped_file(weather) or _own_file(weather, folder)
+        climate = _read(path, path.name)
+        return _placed(climate, latitude=latitude, longitude=longitude, time_zone=time_zone)
+    except InputError as error:
+        raise InputError(
+            replace(problem, sheet=sheet, cell=cell, column=column) for problem in error.problems
+        ) from error
+
+
+def _own_file(weather: str, folder: Path) -> Path:
+    name = weather.strip()
+    path = folder / name
+    if path.is_file():
+        return path
+    if path.is_dir():
+        fix = "Add the name of the weather file to the path."
+        raise InputError([Problem(f"the folder '{name}'", "a weather file", fix)])
+    if path.suffix or "/" in name or "\\" in name:
+        fix = "Correct the path; it starts from the folder of the workbook."
+        raise InputError([Problem(f"no file '{name}'", "the path of a weather file", fix)])
+    raise InputError([_unknown_name(name)])
+
+
+def _unknown_name(name: str) -> Problem:
+    known = {title.casefold(): title for title in shipped_climates()}
+    nearest = get_close_matches(name.casefold(), known, n=1)
+    names = ", ".join(known.values())
+    fix = f"Did you mean '{known[nearest[0]]}'?" if nearest else f"Shipped climates are {names}."
+    return Problem(f"the text '{name}'", "the name of a shipped climate or the path of a weather file", fix)
+
+
+def _read(path: Path, name: str) -> HourlyClimate:
+    try:
+        climate = read_climate(_content(path))
+    except OSError as error:
+        fix = "Close it in other programs and check that you may read it."
+        problem = Problem(f"a file that cannot be opened ({error.strerror})", "a weather file", fix)
+        raise InputError([replace(problem, file=name)]) from error
+    except InputError as error:
+        raise InputError(replace(problem, file=name) for problem in error.problems) from error
+    return climate if climate.name else replace(climate, name=path.stem)
+
+
+def _content(path: Path) -> bytes:
+    if path.stat().st_size > LARGEST_FILE:
+        fix = "Give a file of one year of hours."
+        raise InputError([Problem("a file of more than 50 MB", "a weather file of a few MB", fix)])
+    return path.read_bytes()
+
+
+def _placed(
+    climate: HourlyClimate, *, latitude: float | None, longitude: float | None, time_zone: float | None
+) -> HourlyClimate:
+    """The climate at the workbook's place where that differs from the file's, each difference noted."""
+    given = {"latitude": (latitude, "°"), "longitude": (longitude, "°"), "time_zone": (time_zone, " h")}
+    changed = {
+        field: (value, unit)
+        for field, (value, unit) in given.items()
+        if value is not None and value != getattr(climate.site, field)
+    }
+    if not changed:
+        return climate
+    remarks = tuple(
+        f"The {field.replace('_', ' ')} {value:g}{unit} of the workbook is used instead of "
+        f"{getattr(climate.site, field):g}{unit} of the weather file."
+        for field, (value, unit) in changed.items()
+    )
+    site: Site = climate.site._replace(**{field: value for field, (value, _) in changed.items()})
+    return climate.moved(site, remarks)

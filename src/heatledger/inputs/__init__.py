@@ -1,0 +1,1 @@
+"""What the user may type: one row model per sheet, each column declared once."""

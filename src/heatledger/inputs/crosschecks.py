@@ -1,0 +1,166 @@
+"""Checks between rows and sheets: what no single row can show."""
+
+from __future__ import annotations
+
+from collections import Counter, defaultdict
+from collections.abc import Callable, Iterator
+from typing import TypeAlias
+
+from heatledger.errors import Problem
+from heatledger.inputs.checking import problem_at
+from heatledger.inputs.columns import plain
+from heatledger.inputs.names import Typed
+from heatledger.inputs.rowchecks import crossed_set_points, default_tilt, is_level
+from heatledger.inputs.rows import NEIGHBOUR, OUTDOORS, BuildUpRow, Rows, UsageRow, ZoneRow
+from heatledger.inputs.wording import folded, nearest
+
+__all__ = ["cross_check", "default_tilt", "folded", "is_level"]
+
+Check: TypeAlias = Callable[[Rows, Typed], Iterator[Problem]]
+
+
+def cross_check(rows: Rows, typed: Typed) -> list[Problem]:
+    """Every problem between the rows of a workbook.
+
+    Parameters
+    ----------
+    rows : Rows
+        The rows that are right in themselves.
+    typed : Typed
+        What stands in the sheets, also in rows at fault: nothing is said to be absent because of another fault.
+
+    Returns
+    -------
+    list of Problem
+    """
+    checks: tuple[Check, ...] = (_zones, _zone_set_points, _layers, _opening_areas, _envelope_of_zones)
+    return [problem for check in checks for problem in check(rows, typed)]
+
+
+def _zones(rows: Rows, typed: Typed) -> Iterator[Problem]:
+    if not typed.records.get(ZoneRow.sheet) and ZoneRow.sheet not in typed.unreadable:
+        yield Problem("no zone", "at least one heated zone", "Fill in a row for each zone.", sheet=ZoneRow.sheet)
+    usage_based = {folded(system.name) for system in rows.air_systems if system.rate_basis == "usage"}
+    for zone in rows.zones:
+        if not zone.usage and zone.conditioning == "unconditioned" and folded(zone.air_system) in usage_based:
+            fix = "Choose a usage, or an air system with another rate basis."
+            yield problem_at(zone, "usage", "an empty cell", "a usage, since the air system's rate follows it", fix)
+    whole = len(rows.zones) == len(typed.records.get(ZoneRow.sheet, ()))
+    if whole and rows.zones and all(zone.conditioning == "unconditioned" for zone in rows.zones):
+        fix = "Set the conditioning of at least one zone to heated."
+        yield problem_at(rows.zones[0], "conditioning", "unconditioned zones only", "at least one heated zone", fix)
+
+
+def _zone_set_points(rows: Rows, typed: Typed) -> Iterator[Problem]:
+    """A set-point of the zone against the other one, its own or the usage's."""
+    usages = {folded(usage.name): usage for usage in rows.usages}
+    for zone in rows.zones:
+        usage = usages.get(folded(zone.usage))
+        heating, cooling = _set_points(zone, usage)
+        own = zone.heating_set_point is not None or zone.cooling_set_point is not None
+        if own and heating is not None and cooling is not None:
+            field = "heating_set_point" if zone.cooling_set_point is None else "cooling_set_point"
+            yield from crossed_set_points(zone, field, heating, cooling)
+
+
+def _set_points(zone: ZoneRow, usage: UsageRow | None) -> tuple[float | None, float | None]:
+    heating, cooling = zone.heating_set_point, zone.cooling_set_point
+    if usage is None:
+        return heating, cooling
+    return (
+        usage.heating_set_point if heating is None else heating,
+        usage.cooling_set_point if cooling is None else cooling,
+    )
+
+
+def _layers(rows: Rows, typed: Typed) -> Iterator[Problem]:
+    """Layers are numbered from 1 without gaps; a build-up with a layer at fault is left for the next run."""
+    build_ups: dict[str, list[BuildUpRow]] = defaultdict(list)
+    for layer in rows.build_ups:
+        build_ups[folded(layer.name)].append(layer)
+    typed_layers = Counter(map(folded, typed.words(BuildUpRow.sheet, "name")))
+    for name, layers in build_ups.items():
+        if len(layers) == typed_layers[name]:
+            yield from _numbering(sorted(layers, key=lambda layer: layer.layer))
+
+
+def _numbering(layers: list[BuildUpRow]) -> Iterator[Problem]:
+    for expected, layer in enumerate(layers, start=1):
+        if layer.layer != expected:
+            again = " a second time" if layer.layer < expected else ""
+            found = f"layer {layer.layer} of '{layer.name}'{again}"
+            fix = "Number the layers from 1 without gaps, the inside layer first."
+            yield problem_at(layer, "layer", found, f"layer {expected}", fix)
+            return
+
+
+def _opening_areas(rows: Rows, typed: Typed) -> Iterator[Problem]:
+    areas: dict[str, float] = defaultdict(float)
+    for opening in rows.openings:
+        areas[folded(opening.element)] += opening.count * opening.width * opening.height
+    for element in rows.elements:
+        openings = areas[folded(element.name)]
+        if openings > element.area * (1 + 1e-9):
+            found = f"{plain(element.area)} m² with {openings:.2f} m² of openings in '{element.name}'"
+            fix = "Correct the gross area, or the sizes and number on sheet Openings."
+            yield problem_at(element, "area", found, "an area that holds its openings", fix)
+
+
+def _envelope_of_zones(rows: Rows, typed: Typed) -> Iterator[Problem]:
+    """Every conditioned zone has an envelope; every unconditioned zone is tied to a known temperature."""
+    if typed.unreadable & {"Envelope", "Ground floors"}:
+        return
+    mentioned = _zones_in_faulty_rows(rows, typed) | _zones_misspelt(typed)
+    bounded, tied = _bounded_zones(rows) | mentioned, _zones_with_heat_path(rows, mentioned)
+    for zone in rows.zones:
+        if folded(zone.name) in {OUTDOORS, NEIGHBOUR}:
+            continue
+        fix = f"Add the elements of '{zone.name}' to sheet Envelope."
+        if zone.conditioning != "unconditioned" and folded(zone.name) not in bounded:
+            found = f"'{zone.name}' without envelope"
+            yield problem_at(zone, "name", found, "at least one element or ground floor", fix)
+        if zone.conditioning == "unconditioned" and folded(zone.name) not in tied:
+            expected = "an element to outdoors or to a conditioned zone, or a ground floor"
+            yield problem_at(zone, "name", f"'{zone.name}' without any heat path", expected, fix)
+
+
+def _zones_in_faulty_rows(rows: Rows, typed: Typed) -> set[str]:
+    """Zones that elements or ground floors at fault would enclose."""
+    found: set[str] = set()
+    for sheet, sound in (("Envelope", rows.elements), ("Ground floors", rows.ground_floors)):
+        numbers = {row.row_number for row in sound}
+        faulty = [record.cells for record in typed.records.get(sheet, ()) if record.row not in numbers]
+        found |= {folded(str(cells[field].value)) for cells in faulty for field in ("zone", "faces") if field in cells}
+    return found - {OUTDOORS, NEIGHBOUR}
+
+
+def _zones_misspelt(typed: Typed) -> set[str]:
+    """Zones that are most likely meant where an element or ground floor names an unknown one."""
+    known = {folded(name): name for name in typed.words("Zones", "name")}
+    words = {*typed.words("Envelope", "zone"), *typed.words("Envelope", "faces"), *typed.words("Ground floors", "zone")}
+    unknown = {word for word in words if folded(word) not in {*known, OUTDOORS, NEIGHBOUR}}
+    return {folded(nearest(word, known.values())) for word in unknown}
+
+
+def _bounded_zones(rows: Rows) -> set[str]:
+    """Zones with an element between them and something else, or with a ground floor."""
+    sides = [(folded(element.zone), folded(element.faces)) for element in rows.elements]
+    return {zone for one, other in sides if one != other for zone in (one, other)} | {
+        folded(floor.zone) for floor in rows.ground_floors
+    }
+
+
+def _zones_with_heat_path(rows: Rows, mentioned: set[str]) -> set[str]:
+    """Zones from which heat can flow, also through other unconditioned zones, to a known temperature."""
+    tied = {folded(zone.name) for zone in rows.zones if zone.conditioning != "unconditioned"} | mentioned
+    tied |= {folded(floor.zone) for floor in rows.ground_floors}
+    tied |= {folded(element.zone) for element in rows.elements if folded(element.faces) == OUTDOORS}
+    links = [(folded(element.zone), folded(element.faces)) for element in rows.elements]
+    grown = True
+    while grown:
+        before = len(tied)
+        for one, other in links:
+            if one in tied or other in tied:
+                tied |= {one, other} - {OUTDOORS, NEIGHBOUR}
+        grown = len(tied) > before
+    return tied

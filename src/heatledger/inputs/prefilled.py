@@ -1,0 +1,65 @@
+"""What stands in a new workbook: the standard profiles, the materials and the filled example."""
+
+from __future__ import annotations
+
+import csv
+from collections.abc import Iterator
+from importlib import resources
+from typing import TypeAlias
+
+from heatledger.inputs.columns import Column, SheetRow
+from heatledger.inputs.rows import SHEETS, MaterialRow, UsageRow
+
+__all__ = ["Values", "blank_values", "example_values"]
+
+Values: TypeAlias = dict[str, list[dict[str, object]]]
+"""Filled cells by sheet name: rows as field name and value."""
+
+
+def blank_values() -> Values:
+    """Rows of a blank workbook: the standard profiles of use and the shipped materials.
+
+    >>> sorted(blank_values())
+    ['Materials', 'Usage']
+    """
+    return {UsageRow.sheet: _rows(UsageRow, "usage.csv"), MaterialRow.sheet: _rows(MaterialRow, "materials.csv")}
+
+
+def example_values() -> Values:
+    """Rows of the filled example; its own usages and materials stand before the shipped ones."""
+    shipped = blank_values()
+    return {
+        model.sheet: _rows(model, f"example/{_file_name(model)}") + shipped.get(model.sheet, []) for model in SHEETS
+    }
+
+
+def _file_name(model: type[SheetRow]) -> str:
+    """File of a sheet's example rows, e.g. ``air_systems.csv``."""
+    return model.sheet.casefold().replace(" ", "_").replace("-", "_") + ".csv"
+
+
+def _rows(model: type[SheetRow], path: str) -> list[dict[str, object]]:
+    """Filled cells of a table of the package; its other columns are not for this sheet."""
+    columns = model.columns()
+    return [
+        {field: _typed(text.strip(), columns[field]) for field, text in row.items() if field in columns and text}
+        for row in csv.DictReader(_lines(path))
+    ]
+
+
+def _lines(path: str) -> Iterator[str]:
+    """Lines of a table below its head, whose lines begin with #."""
+    table = resources.files("heatledger") / "data" / path
+    return (line for line in table.read_text(encoding="utf-8").splitlines() if not line.startswith("#"))
+
+
+def _typed(text: str, column: Column) -> object:
+    match column.kind:
+        case "number":
+            return float(text)
+        case "integer":
+            return int(text)
+        case "azimuth":
+            return text if text.isalpha() else float(text)
+        case _:
+            return text

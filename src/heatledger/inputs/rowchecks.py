@@ -1,0 +1,129 @@
+"""Rules between the cells of one row."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterator
+from typing import Any, TypeAlias
+
+from heatledger.errors import Problem
+from heatledger.inputs.checking import Checked, problem_at
+from heatledger.inputs.columns import SheetRow, plain
+from heatledger.inputs.rows import (
+    NEIGHBOUR,
+    OUTDOORS,
+    AirSystemRow,
+    ElementRow,
+    GroundFloorRow,
+    ThermalBridgeRow,
+    UsageRow,
+    ZoneRow,
+)
+from heatledger.inputs.wording import folded
+
+__all__ = ["check_row", "crossed_set_points", "default_tilt", "is_level"]
+
+Rule: TypeAlias = tuple[type[SheetRow], frozenset[str], Callable[[Any], Iterator[Problem]]]
+"""Row model, the fields a rule reads, and the rule."""
+
+
+def check_row(checked: Checked[Any]) -> Iterator[Problem]:
+    """Problems between the cells of a row; a rule that reads a cell at fault is passed over."""
+    for model, fields, rule in _RULES:
+        if isinstance(checked.partial, model) and not fields & checked.at_fault:
+            yield from rule(checked.partial)
+
+
+def default_tilt(element: ElementRow) -> float:
+    """Tilt of an element, by its kind where the cell is empty."""
+    if element.tilt is not None:
+        return element.tilt
+    return {"roof": 0.0, "floor": 180.0}.get(element.kind, 90.0)
+
+
+def is_level(tilt: float) -> bool:
+    """Whether a plane has no direction: it faces straight up or down."""
+    return tilt in {0.0, 180.0}
+
+
+def crossed_set_points(row: SheetRow, field: str, heating: float, cooling: float) -> Iterator[Problem]:
+    """A cooling set-point below the one for heating."""
+    if heating > cooling:
+        found = f"{plain(heating)} °C for heating and {plain(cooling)} °C for cooling"
+        yield problem_at(row, field, found, "cooling not below heating", "Correct one of the two set-points.")
+
+
+def _zone_name(zone: ZoneRow) -> Iterator[Problem]:
+    if folded(zone.name) in {OUTDOORS, NEIGHBOUR}:
+        expected = f"a name other than {OUTDOORS} and {NEIGHBOUR}"
+        yield problem_at(zone, "name", f"'{zone.name}'", expected, "Rename the zone.")
+
+
+def _zone_usage(zone: ZoneRow) -> Iterator[Problem]:
+    if not zone.usage and zone.conditioning != "unconditioned":
+        fix = "Choose a row of sheet Usage."
+        yield problem_at(zone, "usage", "an empty cell", "the usage of a conditioned zone", fix)
+
+
+def _usage_set_points(usage: UsageRow) -> Iterator[Problem]:
+    return crossed_set_points(usage, "cooling_set_point", usage.heating_set_point, usage.cooling_set_point)
+
+
+def _rate(system: AirSystemRow) -> Iterator[Problem]:
+    if system.rate_basis == "usage" and system.rate is not None:
+        expected, fix = (
+            "an empty cell, since the rate follows the usage",
+            "Clear the rate, or choose another rate basis.",
+        )
+        yield problem_at(system, "rate", plain(system.rate), expected, fix)
+    if system.rate_basis != "usage" and system.rate is None and system.kind != "natural":
+        fix = "Fill in the rate, or choose rate basis usage."
+        yield problem_at(system, "rate", "an empty cell", "the rate of a system with fans", fix)
+
+
+def _heat_recovery(system: AirSystemRow) -> Iterator[Problem]:
+    if system.heat_recovery > 0 and system.kind != "balanced":
+        found = f"{plain(system.heat_recovery)} % for a system of kind {system.kind}"
+        expected = "0 or an empty cell, since only a balanced system recovers heat"
+        yield problem_at(system, "heat_recovery", found, expected, "Clear the cell, or set the kind to balanced.")
+
+
+def _construction(row: ElementRow | GroundFloorRow) -> Iterator[Problem]:
+    if not row.build_up and row.u_value is None:
+        fix = "Choose a build-up or type a U-value."
+        yield problem_at(row, "build_up", "neither a build-up nor a U-value", "one of the two", fix)
+    if row.build_up and row.u_value is not None:
+        found = f"both the build-up '{row.build_up}' and the U-value {plain(row.u_value)}"
+        yield problem_at(row, "u_value", found, "one of the two", "Clear one of the two cells.")
+
+
+def _direction(element: ElementRow) -> Iterator[Problem]:
+    outdoors = folded(element.faces) == OUTDOORS
+    if outdoors and element.azimuth is None and not is_level(default_tilt(element)):
+        expected = "the direction of an element that faces outdoors"
+        fix = "Type degrees from north clockwise, or N, NE, E …"
+        yield problem_at(element, "azimuth", "an empty cell", expected, fix)
+
+
+def _bridge(bridge: ThermalBridgeRow) -> Iterator[Problem]:
+    pairs = (("length", "linear_transmittance", "length and ψ"), ("count", "point_transmittance", "number and χ"))
+    given = {field for pair in pairs for field in pair[:2] if getattr(bridge, field) is not None}
+    if not given:
+        fix = "Fill in length and ψ, or number and χ."
+        yield problem_at(bridge, "length", "neither a linear nor a point bridge", "one of the two", fix)
+    for amount, transmittance, words in pairs:
+        if len(given & {amount, transmittance}) == 1:
+            empty = transmittance if amount in given else amount
+            yield problem_at(bridge, empty, "an empty cell", f"{words} together", "Fill in the cell.")
+
+
+_RULES: tuple[Rule, ...] = (
+    (ZoneRow, frozenset({"name"}), _zone_name),
+    (ZoneRow, frozenset({"conditioning", "usage"}), _zone_usage),
+    (UsageRow, frozenset({"heating_set_point", "cooling_set_point"}), _usage_set_points),
+    (AirSystemRow, frozenset({"kind", "rate_basis", "rate"}), _rate),
+    (AirSystemRow, frozenset({"kind", "heat_recovery"}), _heat_recovery),
+    (ElementRow, frozenset({"build_up", "u_value"}), _construction),
+    (ElementRow, frozenset({"kind", "faces", "azimuth", "tilt"}), _direction),
+    (GroundFloorRow, frozenset({"build_up", "u_value"}), _construction),
+    (ThermalBridgeRow, frozenset({"length", "linear_transmittance", "count", "point_transmittance"}), _bridge),
+)

@@ -1,0 +1,1 @@
+"""One module per published standard: numbers and arrays in, numbers and arrays out."""

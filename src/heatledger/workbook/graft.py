@@ -1,0 +1,243 @@
+"""Puts freshly built result sheets into a workbook and leaves all its other parts as they are.
+
+Only the content types, the workbook part, its relations and the styles change.
+Sheets of ours carry a hidden workbook-level name and are replaced in their place.
+"""
+
+from __future__ import annotations
+
+import posixpath
+import warnings
+from collections.abc import Collection, Iterable
+from dataclasses import dataclass, replace
+from functools import partial
+from pathlib import Path
+from typing import BinaryIO
+from zipfile import BadZipFile, ZipFile
+
+from openpyxl import load_workbook
+
+from heatledger.errors import InputError, Problem
+from heatledger.workbook.donor import DonorCopier
+from heatledger.workbook.files import lock_notes, write_whole
+from heatledger.workbook.gate import read_package, readable
+from heatledger.workbook.index import Index
+from heatledger.workbook.package import Package, SheetEntry, dump, main
+from heatledger.workbook.references import marker_name, rename_sheets
+from heatledger.workbook.styles import EMPTY_STYLES, StyleMerger
+
+__all__ = ["GraftReport", "graft"]
+
+_STYLES_TYPE = "application/vnd.openxmlformats-officedocument.spreadsheetml.styles+xml"
+
+
+@dataclass(frozen=True)
+class GraftReport:
+    """What was done to the workbook.
+
+    Parameters
+    ----------
+    titles : dict of str to str
+        Present name of each result sheet, by the name it was built with.
+    added, replaced, dropped : tuple of str
+        Present names of new sheets, of those written over, and of our earlier ones that went.
+    notes : tuple of str
+        Sentences for the user.
+    """
+
+    titles: dict[str, str]
+    added: tuple[str, ...]
+    replaced: tuple[str, ...]
+    dropped: tuple[str, ...]
+    notes: tuple[str, ...]
+
+
+def graft(original: Path, donor: bytes, target: Path) -> GraftReport:
+    """Write a workbook with new result sheets; the same input gives the same bytes.
+
+    A sheet of ours keeps its place and the name that the user may have given it.
+    A new sheet whose name a sheet of the user has gets another name.
+
+    Parameters
+    ----------
+    original : Path
+        The user's workbook; it is only read.
+    donor : bytes
+        A workbook that holds the result sheets and nothing else.
+    target : Path
+        File to write, often the original itself.
+
+    Raises
+    ------
+    InputError
+        If the original is no sound workbook or the target cannot be written;
+        the target is then as it was.
+    """
+    package = read_package(original)
+    results = Package.from_bytes(donor)
+    with readable(original):
+        report = _merge(package, results)
+    notes = report.notes + lock_notes(target)
+    verify = partial(_verify, original=original, target=target, titles=report.titles.values())
+    write_whole(target, package.to_bytes(), verify)
+    return replace(report, notes=notes)
+
+
+def _merge(package: Package, donor: Package) -> GraftReport:
+    index = Index(package)
+    markers = _markers(donor)
+    owned = index.owned()
+    kept = {markers[marker]: entry for marker, entry in owned.items() if marker in markers}
+    dropped = [entry for marker, entry in owned.items() if marker not in markers]
+    code_names = {title: _code_name(package, entry) for title, entry in kept.items()}
+    _forget(package, index, owned.values())
+    for entry in dropped:
+        index.remove(entry)
+    index.clear_names(entry.title for entry in kept.values())
+    titles = _titles(donor, index, kept)
+    _copy_sheets(package, donor, index, titles, kept=kept, code_names=code_names)
+    _copy_names(donor, index, titles)
+    index.store()
+    return GraftReport(
+        titles,
+        added=tuple(new for old, new in titles.items() if old not in kept),
+        replaced=tuple(new for old, new in titles.items() if old in kept),
+        dropped=tuple(entry.title for entry in dropped),
+        notes=tuple(_notes(index, titles, kept)),
+    )
+
+
+def _markers(donor: Package) -> dict[str, str]:
+    """Title of each result sheet by its marker."""
+    titles = [entry.title for entry in donor.sheets()]
+    markers = {marker_name(title): title for title in titles}
+    if len(markers) < len(titles):
+        raise RuntimeError("two result sheets would share a marker")
+    return markers
+
+
+def _code_name(package: Package, entry: SheetEntry) -> str | None:
+    """Name of the macro module of a sheet, which has to stay with its place."""
+    properties = package.xml(entry.part).find(main("sheetPr"))
+    return None if properties is None else properties.get("codeName")
+
+
+def _forget(package: Package, index: Index, entries: Collection[SheetEntry]) -> None:
+    """Remove our earlier sheets with all that only they use."""
+    sheets = {entry.part for entry in entries}
+    if not sheets:
+        return
+    package.remove(_reachable(package, sheets) - _reachable(package, {""}, barred=sheets))
+    chain = package.related(package.workbook, "calcChain")
+    ids = {entry.element.get("sheetId") for entry in entries}
+    if chain and any(cell.get("i") in ids for cell in package.xml(chain)):
+        index.unrelate("calcChain")  # a cell listed there has to exist; the list is rebuilt on opening
+        package.remove({chain})
+
+
+def _reachable(package: Package, start: Iterable[str], barred: Collection[str] = ()) -> set[str]:
+    found: set[str] = set()
+    waiting = list(start)
+    while waiting:
+        part = waiting.pop()
+        if part not in found and part not in barred:
+            found.add(part)
+            waiting += [item.target for item in package.relations(part) if not item.external]
+    return found
+
+
+def _titles(donor: Package, index: Index, kept: dict[str, SheetEntry]) -> dict[str, str]:
+    titles: dict[str, str] = {}
+    for entry in donor.sheets():
+        old = entry.title
+        titles[old] = kept[old].title if old in kept else index.free_title(old, titles.values())
+    return titles
+
+
+def _copy_sheets(
+    package: Package,
+    donor: Package,
+    index: Index,
+    titles: dict[str, str],
+    *,
+    kept: dict[str, SheetEntry],
+    code_names: dict[str, str | None],
+) -> None:
+    styles_part = _styles_part(package, index)
+    styles = package.xml(styles_part)
+    merger = StyleMerger(styles, donor.xml(donor.related(donor.workbook, "styles") or ""))
+    copier = DonorCopier(package, donor, merger, _renames(titles), index.table_names())
+    for entry in donor.sheets():
+        part = copier.sheet(entry.part, code_names.get(entry.title))
+        if entry.title in kept:
+            index.replace(kept[entry.title], part)
+        else:
+            index.append(titles[entry.title], part, entry.element.get("state"))
+    package.parts[styles_part] = dump(styles)
+
+
+def _styles_part(package: Package, index: Index) -> str:
+    part = package.related(package.workbook, "styles")
+    if part is None:
+        part = posixpath.join(posixpath.dirname(package.workbook), "styles.xml")
+        package.add(part, EMPTY_STYLES, _STYLES_TYPE)
+        index.relate("styles", part)
+    return part
+
+
+def _renames(titles: dict[str, str]) -> dict[str, str]:
+    return {old.casefold(): new for old, new in titles.items() if old != new}
+
+
+def _copy_names(donor: Package, index: Index, titles: dict[str, str]) -> None:
+    """Carry over print titles and the like, then mark the sheets."""
+    places = list(titles.values())
+    for name in donor.xml(donor.workbook).iterfind(f"{main('definedNames')}/{main('definedName')}"):
+        place = name.get("localSheetId")
+        if place is None:
+            raise RuntimeError(f"result sheets hold a name of the whole workbook: {name.get('name')}")
+        index.add_name(name, places[int(place)], rename_sheets(name.text or "", _renames(titles)))
+    for old, new in titles.items():
+        index.mark(old, new)
+
+
+def _notes(index: Index, titles: dict[str, str], kept: dict[str, SheetEntry]) -> Iterable[str]:
+    for old, new in titles.items():
+        if old not in kept and old != new:
+            yield f"A sheet of yours is called {old}; the results are on the sheet {new}."
+    if index.structure_locked:
+        yield "The list of sheets is locked in this workbook; the result sheets were written all the same."
+
+
+def _verify(path: Path, *, original: Path, target: Path, titles: Collection[str]) -> None:
+    """Read back what was written, as another program would."""
+    cause = _flaw(path, titles)
+    if cause and (cause == "BadZipFile" or not _flaw(original, ())):  # who cannot read the original is no judge
+        found = f"that the result cannot be read back ({cause})"
+        fix = "Nothing was changed. Open and save the workbook in your spreadsheet program, and try again."
+        raise InputError([Problem(found, "a sound workbook", fix, file=target.name)])
+
+
+def _flaw(path: Path, titles: Collection[str]) -> str:
+    """What keeps another reader from reading these sheets."""
+    try:
+        with path.open("rb") as file:  # openpyxl refuses the name of a temporary file
+            _test_archive(file)
+            with warnings.catch_warnings():
+                warnings.simplefilter("ignore")  # openpyxl warns of what it would not keep
+                book = load_workbook(file, read_only=True)
+            for title in titles:
+                for _ in book[title].iter_rows(values_only=True):
+                    pass
+    except OSError:
+        raise
+    except Exception as error:  # whatever another reader stumbles over
+        return type(error).__name__
+    return ""
+
+
+def _test_archive(file: BinaryIO) -> None:
+    with ZipFile(file) as archive:
+        broken = archive.testzip()
+    if broken:
+        raise BadZipFile(broken)

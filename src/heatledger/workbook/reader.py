@@ -1,0 +1,260 @@
+"""The stored values of a workbook, read in one bounded pass per sheet."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Callable, Collection, Iterator
+from dataclasses import dataclass
+from datetime import datetime, timedelta
+from io import BytesIO
+from pathlib import Path
+
+from lxml import etree
+
+from heatledger.errors import InputError, Problem
+from heatledger.inputs.cells import Cell, Cells, reference
+from heatledger.workbook.gate import read_package, readable
+from heatledger.workbook.package import Element, Package, SheetEntry, main, required
+from heatledger.workbook.references import global_markers
+
+__all__ = ["owned_sheets", "read_cells"]
+
+MOST_ROWS = 20_000
+MOST_COLUMNS = 500
+MOST_CELLS = 2_000_000
+
+_ROW, _VALUE, _FORMULA, _INLINE = main("row"), main("v"), main("f"), main("is")
+_TEXT, _RUN = main("t"), main("r")
+_ESCAPED = re.compile("_x([0-9A-Fa-f]{4})_")
+_NOT_A_DATE_PART = re.compile(r'"[^"]*"|\\.|_.|\*.|\[[^\]]*\]')
+_DATE_FORMATS = {*range(14, 23), *range(27, 37), *range(45, 48), *range(50, 59)}
+"""Built-in number formats that show dates or times (ECMA-376 Part 1, 18.8.30)."""
+
+
+def owned_sheets(path: Path) -> frozenset[str]:
+    """Names of the sheets that carry our marker."""
+    package = read_package(path)
+    with readable(path):
+        return _owned(package)
+
+
+def read_cells(path: Path, wanted: Collection[str] | None = None) -> dict[str, Cells]:
+    """The filled cells of every worksheet, in the order of the tabs.
+
+    Result sheets of ours and chart sheets are left out. White space counts as
+    empty; the outer spaces of other texts are kept.
+
+    Parameters
+    ----------
+    path : Path
+        An .xlsx or .xlsm file.
+    wanted : collection of str, optional
+        Sheets to read, in any case; the others stand in the result without cells,
+        so a user's own large sheet costs nothing and meets no limit.
+
+    Raises
+    ------
+    InputError
+        If the file is no sound workbook, or sheets hold more than can be read.
+    """
+    package = read_package(path)
+    with readable(path):
+        book = _Book(_strings(package), *_dates(package))
+        entries = _user_sheets(package)
+    only = None if wanted is None else {_folded(title) for title in wanted}
+    sheets: dict[str, Cells] = {entry.title: {} for entry in entries}
+    problems: list[Problem] = []
+    room = MOST_CELLS
+    for entry in entries:
+        if only is None or _folded(entry.title) in only:
+            try:
+                sheets[entry.title] = _sheet(path, package, entry, book, room)
+                room -= len(sheets[entry.title])
+            except InputError as error:
+                problems += error.problems
+    if problems:
+        raise InputError(problems)
+    return sheets
+
+
+def _folded(title: str) -> str:
+    return title.strip().casefold()
+
+
+def _user_sheets(package: Package) -> list[SheetEntry]:
+    """Worksheets that are not ours."""
+    owned = {title.casefold() for title in _owned(package)}
+    return [entry for entry in package.sheets() if entry.kind == "worksheet" and entry.title.casefold() not in owned]
+
+
+@dataclass(frozen=True)
+class _Book:
+    """What the cells of all sheets refer to."""
+
+    strings: list[str]
+    is_date: list[bool]
+    start: datetime
+
+
+def _owned(package: Package) -> frozenset[str]:
+    return frozenset(title for _, title in global_markers(package.xml(package.workbook)))
+
+
+def _strings(package: Package) -> list[str]:
+    part = package.related(package.workbook, "sharedStrings")
+    return [_plain(item) for item in package.xml(part)] if part else []
+
+
+def _dates(package: Package) -> tuple[list[bool], datetime]:
+    """Whether each cell style shows dates, and the day before the first serial day."""
+    properties = package.xml(package.workbook).find(main("workbookPr"))
+    late = properties is not None and properties.get("date1904") in {"1", "true"}
+    start = datetime(1904, 1, 1) if late else datetime(1899, 12, 30)
+    part = package.related(package.workbook, "styles")
+    if part is None:
+        return [False], start
+    styles = package.xml(part)
+    codes = {int(required(item, "numFmtId")): required(item, "formatCode") for item in styles.iter(main("numFmt"))}
+    formats = [int(item.get("numFmtId", "0")) for item in styles.iterfind(f"{main('cellXfs')}/{main('xf')}")]
+    return [_shows_date(number, codes.get(number)) for number in formats] or [False], start
+
+
+def _shows_date(number: int, code: str | None) -> bool:
+    if code is None:
+        return number in _DATE_FORMATS
+    bare = _NOT_A_DATE_PART.sub("", code).split(";")[0].lower()
+    return bare != "general" and any(letter in bare for letter in "ymdhs")
+
+
+def _plain(item: Element) -> str:
+    """Text of a string item: its runs joined, without the reading aids of East Asian text."""
+    texts = [item.text for item in _text_elements(item)]
+    return _unescaped("".join(text for text in texts if text))
+
+
+def _text_elements(item: Element) -> Iterator[Element]:
+    for child in item:
+        if child.tag == _TEXT:
+            yield child
+        elif child.tag == _RUN:
+            yield from child.iterfind(_TEXT)
+
+
+def _unescaped(text: str) -> str:
+    if "_x" not in text:
+        return text
+    return _ESCAPED.sub(lambda match: chr(int(match[1], 16)), text)
+
+
+def _sheet(path: Path, package: Package, entry: SheetEntry, book: _Book, room: int) -> Cells:
+    cells: dict[tuple[int, int], Cell] = {}
+    with readable(path, entry.title):
+        for row, column, element in _elements(package.parts[entry.part]):
+            cell = _cell(element, book)
+            if cell is None:
+                continue
+            if row > MOST_ROWS or column > MOST_COLUMNS or len(cells) >= room:
+                raise InputError([_too_much(path, entry.title, row, column)])
+            cells[row, column] = cell
+    return cells
+
+
+def _too_much(path: Path, sheet: str, row: int, column: int) -> Problem:
+    found, limit = f"more than {MOST_CELLS:,} filled cells", f"at most {MOST_CELLS:,} in all sheets"
+    if row > MOST_ROWS:
+        found, limit = f"a value in row {row:,}", f"at most {MOST_ROWS:,} rows"
+    elif column > MOST_COLUMNS:
+        found, limit = f"a value in column {column:,}", f"at most {MOST_COLUMNS:,} columns"
+    fix = "Clear this cell and those beyond it, or move them to another workbook."
+    return Problem(found, limit, fix, sheet=sheet, cell=reference(row, column), file=path.name)
+
+
+def _elements(data: bytes) -> Iterator[tuple[int, int, Element]]:
+    """Row, column and element of every cell; rows are forgotten once read."""
+    row = 0
+    rows = etree.iterparse(BytesIO(data), tag=_ROW, resolve_entities=False, no_network=True)
+    for _, line in rows:
+        row = int(line.get("r") or row + 1)
+        column = 0
+        for element in line:
+            name = element.get("r")
+            column = _column(name) if name else column + 1
+            yield row, column, element
+        line.clear()
+        parent = line.getparent()
+        while parent is not None and line.getprevious() is not None:
+            del parent[0]
+
+
+def _column(name: str) -> int:
+    column = 0
+    for letter in name:
+        if letter.isdigit():
+            break
+        column = column * 26 + ord(letter) - 64
+    return column
+
+
+def _cell(element: Element, book: _Book) -> Cell | None:
+    text, formula = None, False
+    for child in element:
+        if child.tag == _VALUE:
+            text = child.text or ""
+        elif child.tag == _FORMULA:
+            formula = True
+        elif child.tag == _INLINE:
+            text = _plain(child)
+    kind = element.get("t", "n")
+    if text:
+        return _DECODE[kind](text, int(element.get("s", "0")), book)
+    if formula and (text is None or kind != "str"):
+        return Cell(None, "uncalculated")
+    return None
+
+
+def _number(text: str, style: int, book: _Book) -> Cell:
+    number = float(text)
+    if not book.is_date[style]:
+        return Cell(number, "number")
+    return Cell(_moment(number, book.start), "date")
+
+
+def _moment(serial: float, start: datetime) -> str:
+    """ISO text of a serial day; what has no date stays a number in the text.
+
+    >>> _moment(45000, datetime(1899, 12, 30)), _moment(45000.5, datetime(1899, 12, 30))
+    ('2023-03-15', '2023-03-15T12:00:00')
+    >>> _moment(0.25, datetime(1899, 12, 30)), _moment(-1, datetime(1899, 12, 30))
+    ('06:00:00', '-1')
+    """
+    early = start.year < 1900 and 1 <= serial < 61
+    try:  # the calendar of 1900 counts a 29 February that never was
+        moment = start + timedelta(days=int(early), seconds=round(serial * 86400))
+    except OverflowError:
+        return f"{serial:g}"
+    if serial < 0:
+        return f"{serial:g}"
+    return moment.time().isoformat() if serial < 1 else moment.isoformat().removesuffix("T00:00:00")
+
+
+def _text(text: str, style: int, book: _Book) -> Cell | None:
+    return Cell(_unescaped(text), "text") if text.strip() else None
+
+
+def _shared_text(text: str, style: int, book: _Book) -> Cell | None:
+    index = int(text)
+    if index < 0:
+        raise IndexError("negative string index")
+    string = book.strings[index]
+    return Cell(string, "text") if string.strip() else None
+
+
+_DECODE: dict[str, Callable[[str, int, _Book], Cell | None]] = {
+    "n": _number,
+    "s": _shared_text,
+    "str": _text,
+    "inlineStr": lambda text, style, book: Cell(text, "text") if text.strip() else None,
+    "b": lambda text, style, book: Cell(text in {"1", "true"}, "boolean"),
+    "e": lambda text, style, book: Cell(text, "error"),
+    "d": lambda text, style, book: Cell(text.removesuffix("T00:00:00"), "date"),
+}

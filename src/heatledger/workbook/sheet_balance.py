@@ -1,0 +1,158 @@
+"""The sheet Monthly balance: each loss and gain of the building and of every zone."""
+
+from __future__ import annotations
+
+from dataclasses import fields, replace
+
+import numpy as np
+from openpyxl.worksheet.worksheet import Worksheet
+
+from heatledger.results import ClimateResult, Months, Results, ZoneResult, label_of
+from heatledger.workbook.charts import BLUE, GREY, ORANGE, SKY, VERMILLION, YELLOW, Area, Bars, add_columns
+from heatledger.workbook.look import BODY, LINE, MONTHS, NUMBER, SECTION, Canvas, print_setup
+from heatledger.workbook.monthly import conditioned, head, sum_of, year_mean
+
+__all__ = ["write_monthly_balance"]
+
+REMARK = (
+    "Losses and gains of each calendar month as they enter the balance: transmission and ventilation at the "
+    "set-points, γ gains divided by losses, η the share that counts. Totals are formed before rounding."
+)
+HEADER_ROW = 5
+CHART_HEIGHT = 17
+"""Rows behind the chart."""
+FIRST_MONTH, YEAR = 2, 14
+
+GAINS = ("solar_gains", "internal_gains")
+HEATING = ("transmission_heating", "ventilation_heating", "gain_ratio", "gain_utilisation", "heating_need")
+COOLING = ("transmission_cooling", "ventilation_cooling", "loss_ratio", "loss_utilisation", "cooling_need")
+FACTS = (
+    "exponent",
+    "time_constant",
+    "heat_capacity",
+    "transmission_coefficient",
+    "ventilation_coefficient",
+    "heating_set_point",
+    "cooling_set_point",
+)
+UNCONDITIONED = ("temperature", *GAINS, "transmission_heating", "ventilation_heating")
+UNCONDITIONED_FACTS = (
+    "adjustment_factor",
+    "heat_capacity",
+    "transmission_coefficient",
+    "ventilation_coefficient",
+)
+
+
+def write_monthly_balance(sheet: Worksheet, results: Results) -> None:
+    """Write the sheet."""
+    canvas = Canvas(sheet, (46, *[8.5] * 12, 10))
+    head(canvas, results, sheet.title, REMARK)
+    canvas.titles(HEADER_ROW, ("Quantity", *MONTHS, "Year"))
+    row = _building(canvas, HEADER_ROW + 1, results)
+    blocks = [(HEADER_ROW + 1, row - 1)]
+    for zone in results.zones:
+        first = row
+        row = _zone(canvas, first, zone, results) + 1
+        blocks.append((first, row - 1))
+    canvas.keep_together(blocks, repeated=2 * LINE)
+    sheet.freeze_panes = f"B{HEADER_ROW + 1}"
+    print_setup(sheet, results.project.project, titles=f"{HEADER_ROW}:{HEADER_ROW}")
+
+
+def _building(canvas: Canvas, row: int, results: Results) -> int:
+    """Flows into (+) and out of (−) the conditioned zones in heating mode; each month's sum is zero."""
+    _section(canvas, row, "Building in heating mode: heat into the conditioned zones (+) and out of them (−)")
+    zones = conditioned(results)
+    solar, internal = (sum_of(zones, field) for field in GAINS)
+    transmission, ventilation = (sum_of(zones, field) for field in HEATING[:2])
+    need = results.building.heating_need
+    # Whole kWh, so that the sum of a column is zero as printed, too.
+    solar, internal, transmission, ventilation, need = (
+        np.rint(months) for months in (solar, internal, transmission, ventilation, need)
+    )
+    unused = -(solar + internal + need - transmission - ventilation)
+    flows = (
+        ("Heating need [kWh]", need, VERMILLION),
+        ("Internal gains [kWh]", internal, YELLOW),
+        ("Solar gains less sky losses [kWh]", solar, ORANGE),
+        ("Transmission [kWh]", -transmission, BLUE),
+        ("Ventilation [kWh]", -ventilation, SKY),
+        ("Gains not used [kWh]", unused, GREY),
+    )
+    first = row + 1
+    for place, (title, months, _) in enumerate(flows):
+        _line(canvas, first + place, title, "kWh", months + 0.0)  # turns −0 into 0
+    series = [
+        Bars(Area.across(first + place, 1, 1), Area.across(first + place, FIRST_MONTH, FIRST_MONTH + 11), colour)
+        for place, (_, _, colour) in enumerate(flows)
+    ]
+    chart_row = first + len(flows) + 1
+    canvas.space(chart_row - 1, chart_row + CHART_HEIGHT)
+    add_columns(
+        canvas.sheet,
+        Area(chart_row, 1, chart_row + CHART_HEIGHT - 1, YEAR),
+        ("Losses and gains of the building in heating mode", "kWh per month"),
+        Area.across(HEADER_ROW, FIRST_MONTH, FIRST_MONTH + 11),
+        series,
+        stacked=True,
+    )
+    return chart_row + CHART_HEIGHT + 1
+
+
+def _zone(canvas: Canvas, row: int, zone: ZoneResult, results: Results) -> int:
+    """One zone; gives the row below it."""
+    _section(canvas, row, f"{zone.name} · {zone.conditioning} · {zone.floor_area:,.1f} m²")
+    row += 1
+    _line(canvas, row, label_of(ClimateResult, "temperature"), "°C", results.climate.temperature)
+    if zone.conditioning == "unconditioned":
+        return _facts(canvas, _lines(canvas, row + 1, zone, UNCONDITIONED), zone, UNCONDITIONED_FACTS)
+    row = _lines(canvas, row + 1, zone, GAINS)
+    for part in (HEATING, COOLING):
+        row = _lines(canvas, row, zone, part)
+    return _facts(canvas, row, zone, FACTS)
+
+
+def _lines(canvas: Canvas, row: int, zone: ZoneResult, names: tuple[str, ...]) -> int:
+    for name in names:
+        _line(
+            canvas, row, label_of(ZoneResult, name), _UNITS[name], getattr(zone, name), important=name.endswith("_need")
+        )
+        row += 1
+    return row
+
+
+def _facts(canvas: Canvas, row: int, zone: ZoneResult, names: tuple[str, ...]) -> int:
+    """Figures that hold for the whole year, in the first column of numbers."""
+    for name in names:
+        canvas.put(row, 1, label_of(ZoneResult, name), BODY)
+        canvas.numbers(row, FIRST_MONTH, [getattr(zone, name)])
+        canvas.height(row, 15)
+        row += 1
+    return row
+
+
+def _line(canvas: Canvas, row: int, title: str, unit: str, months: Months, *, important: bool = False) -> None:
+    """Twelve months and what the year makes of them: a sum of energies, a mean of temperatures."""
+    style = _NUMBER_BOLD if important else NUMBER
+    canvas.put(row, 1, title, _BOLD if important else BODY)
+    digits = {"°C": "0.0", "-": "0.00"}.get(unit, "")
+    canvas.numbers(row, FIRST_MONTH, months, style, digits)
+    if unit in {"kWh", "°C"}:
+        year = float(np.sum(months)) if unit == "kWh" else year_mean(months)
+        canvas.numbers(row, YEAR, [year], style, digits)
+    else:
+        canvas.put(row, YEAR, None, style)
+    canvas.height(row, 15)
+
+
+def _section(canvas: Canvas, row: int, text: str) -> None:
+    last = len(canvas.widths)
+    canvas.merged(row, 1, last, text, _HEADING)
+    canvas.fit_merged(row, 1, last, text, size=11, bold=True)
+
+
+_UNITS = {item.name: item.metadata["unit"] for item in fields(ZoneResult)}
+_HEADING = replace(SECTION, wrap=True)
+_BOLD = replace(BODY, bold=True)
+_NUMBER_BOLD = replace(NUMBER, bold=True)

@@ -1,0 +1,49 @@
+"""The sheet Notes: what asks for a second look, defaults used, methods and sources."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from openpyxl.worksheet.worksheet import Worksheet
+
+from heatledger.results import Note, NoteKind, Results
+from heatledger.workbook.look import BODY, LINE, LINK, SECTION, Canvas, print_setup
+from heatledger.workbook.monthly import head
+
+__all__ = ["NOTES", "write_notes"]
+
+NOTES = "Notes"
+REMARK = "A click on a cell's name leads to the cell."
+GROUPS: dict[NoteKind, str] = {
+    "check": "Please look at these again",
+    "default": "Defaults used for empty cells",
+    "method": "Method, step by step",
+    "source": "Sources of data",
+}
+FIRST_ROW = 5
+
+
+def write_notes(sheet: Worksheet, results: Results) -> None:
+    """Write the sheet."""
+    canvas = Canvas(sheet, (28, 112))
+    head(canvas, results, sheet.title, REMARK)
+    canvas.titles(FIRST_ROW - 1, ("Cell", "Note"), text_columns=2)
+    row = FIRST_ROW
+    for kind, title in GROUPS.items():
+        row = _group(canvas, row, title, [note for note in results.notes if note.kind == kind])
+    sheet.freeze_panes = f"A{FIRST_ROW}"
+    print_setup(sheet, results.project.project, titles=f"{FIRST_ROW - 1}:{FIRST_ROW - 1}")
+
+
+def _group(canvas: Canvas, row: int, title: str, notes: Sequence[Note]) -> int:
+    canvas.put(row, 1, f"{title}: {len(notes) or 'none'}", SECTION)
+    canvas.height(row, LINE * 1.8)
+    for note in notes:
+        row += 1
+        place = f"{note.sheet}!{note.cell}" if note.cell else note.sheet
+        cell = canvas.put(row, 1, place, LINK if note.sheet else BODY)
+        if note.sheet:
+            canvas.link(cell, note.sheet, note.cell or "A1")
+        canvas.put(row, 2, note.text, BODY)
+        canvas.fit(row, (place, note.text))
+    return row + 1

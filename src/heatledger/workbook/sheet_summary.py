@@ -1,0 +1,257 @@
+"""The sheet Summary: one printed page for the client."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import replace
+
+import numpy as np
+from openpyxl.worksheet.worksheet import Worksheet
+
+from heatledger.results import BuildingResult, ClimateResult, ElementLoss, Months, ProjectResult, Results, label_of
+from heatledger.workbook.charts import BLUE, SKY, VERMILLION, Area, Bars, add_bars, add_columns
+from heatledger.workbook.guide import CAUTIONS
+from heatledger.workbook.look import (
+    BODY,
+    HEAD,
+    HEAD_NUMBER,
+    LINK,
+    LONG,
+    MONTHS,
+    NUMBER,
+    NUMBER_TOTAL,
+    SECTION,
+    SMALL,
+    TOTAL,
+    Canvas,
+    Style,
+    digits_for,
+    print_setup,
+)
+from heatledger.workbook.monthly import conditioned, months_of_need, sum_of
+from heatledger.workbook.sheet_notes import NOTES
+
+__all__ = ["LOSS_GROUPS", "write_summary"]
+
+LAST = 14
+"""Last column: a column of words, twelve months, the year."""
+LOSS_GROUPS = {
+    "wall": "Walls",
+    "roof": "Roofs",
+    "floor": "Floors",
+    "door": "Doors",
+    "partition": "Partitions",
+    "opening": "Openings",
+    "ground floor": "Ground floors",
+    "thermal bridge": "Thermal bridges",
+    "air leakage": "Air leakage",
+    "ventilation": "Ventilation",
+}
+"""Kinds of losses as the summary names them, in its order."""
+OTHER = "Other"
+_PROJECT_TITLE = Style(bold=True, size=16, colour=SECTION.colour)
+_LABEL = Style(size=9, colour=SMALL.colour)
+_VALUE = Style(size=9)
+
+
+def write_summary(sheet: Worksheet, results: Results) -> None:
+    """Write the sheet; every part keeps its rows whatever the results are."""
+    canvas = Canvas(sheet, (22, *[7.4] * 12, 9))
+    _project(canvas, results)
+    _key_figures(canvas, 8, results)
+    _months(canvas, 17, results.building)
+    _losses(canvas, 39, results)
+    _last_words(canvas, 56, results)
+    for gap in (7, 12, 16):
+        canvas.height(gap, 10)
+    print_setup(sheet, results.project.project, portrait=True, one_page=True)
+
+
+def _project(canvas: Canvas, results: Results) -> None:
+    """Rows 1 to 6."""
+    project, climate = results.project, results.climate
+    canvas.merged(1, 1, LAST, project.project, _PROJECT_TITLE)
+    canvas.fit_merged(1, 1, LAST, project.project, size=16, bold=True)
+    canvas.merged(2, 1, LAST, "Monthly heating and cooling need", Style(colour=SMALL.colour))
+    canvas.height(2, 18)
+    pairs = (
+        (_entry(project, "address"), _entry(project, "client")),
+        (_entry(project, "assessor"), _entry(project, "job_number")),
+        ((label_of(ClimateResult, "name"), climate.name), _entry(project, "method")),
+        (
+            (label_of(BuildingResult, "floor_area"), f"{results.building.floor_area:,.1f}"),
+            _entry(project, "dimensions"),
+        ),
+    )
+    for row, pair in enumerate(pairs, start=3):
+        heights = []
+        for (label, value), (first, last) in zip(pair, ((1, 7), (8, LAST)), strict=True):
+            after = first + 1 if first == 1 else first + 3
+            canvas.merged(row, first, after - 1, label, _LABEL)
+            canvas.merged(row, after, last, value, _VALUE)
+            heights.append(
+                max(
+                    canvas.fit_merged(row, a, b, text, size=9)
+                    for a, b, text in ((first, after - 1, label), (after, last, value))
+                )
+            )
+        canvas.height(row, max(heights))
+
+
+def _entry(project: ProjectResult, field: str) -> tuple[str, str]:
+    return label_of(ProjectResult, field), str(getattr(project, field)) or "–"
+
+
+def _key_figures(canvas: Canvas, row: int, results: Results) -> None:
+    """Rows 8 to 15."""
+    _heading(canvas, row, "Key figures")
+    spans = ((1, 3), (4, 5), (6, 7), (8, 10), (11, LAST))
+    titles = ("", "kWh a year", "kWh/m² a year", "Largest month", "Months above 1 % of the year")
+    for (first, last), title in zip(spans, titles, strict=True):
+        canvas.merged(row + 1, first, last, title, HEAD_NUMBER if first in {4, 6} else _HEAD_INDENTED)
+    canvas.height(row + 1, 16)
+    for place, field in enumerate(("heating_need", "cooling_need"), start=row + 2):
+        _figure_row(canvas, place, field, spans, results.building)
+    for place, sentence in enumerate(_sentences(results), start=row + 5):
+        canvas.merged(place, 1, LAST, sentence, LONG)
+        canvas.fit_merged(place, 1, LAST, sentence)
+
+
+def _figure_row(
+    canvas: Canvas, row: int, field: str, spans: Sequence[tuple[int, int]], building: BuildingResult
+) -> None:
+    need: Months = getattr(building, field)
+    year = float(np.sum(need))
+    largest = int(np.argmax(need))
+    share = year / building.floor_area if building.floor_area else None
+    month = f"{MONTHS[largest]}, {need[largest]:,.0f} kWh" if year > 0 else "none"
+    title = label_of(BuildingResult, field).partition(" [")[0]
+    values = (title, year, share, month, months_of_need(need))
+    digits = ("", digits_for([year]), '0.0;-0.0;"–"', "", "")
+    for (first, last), value, number_format in zip(spans, values, digits, strict=True):
+        style = _FIGURE if not isinstance(value, str) else _NAME if first == 1 else _WORDS
+        canvas.merged(row, first, last, value, style).number_format = number_format or "General"
+    canvas.height(row, 20)
+
+
+_HEAD_INDENTED = replace(HEAD, indent=1)
+_FIGURE = replace(NUMBER, bold=True, size=12, vertical="center")
+_NAME = Style(bold=True, border=BODY.border, vertical="center", wrap=False)
+_WORDS = Style(border=BODY.border, vertical="center", wrap=False, indent=1)
+
+
+def _sentences(results: Results) -> tuple[str, str, str]:
+    return _largest_loss(results), _driver_of_heating(results), _driver_of_cooling(results)
+
+
+def _largest_loss(results: Results) -> str:
+    losses = results.element_losses
+    if not losses:
+        return "Largest single loss: none, no zone is heated."
+    top = max(losses, key=lambda loss: loss.loss)
+    return (
+        f"Largest single loss: {top.name} ({top.kind}, {top.zone}), {top.loss:,.0f} kWh a year, "
+        f"{top.share:.0f} % of the losses."
+    )
+
+
+def _driver_of_heating(results: Results) -> str:
+    groups = {title: share for title, _, share in _grouped(results.element_losses)}
+    if not any(groups.values()):
+        return "Main driver of heating: none."
+    title = max(groups, key=lambda name: groups[name])
+    return f"Main driver of heating: {title.lower()}, {groups[title]:.0f} % of the losses in months with heating."
+
+
+def _driver_of_cooling(results: Results) -> str:
+    """The larger of sun and internal gains while there is a need for cooling."""
+    zones = [zone for zone in conditioned(results) if np.nansum(zone.cooling_need) > 0]
+    season = results.building.cooling_need > 0
+    gains = {
+        "solar gains": float(np.sum(sum_of(zones, "solar_gains"), where=season)),
+        "internal gains": float(np.sum(sum_of(zones, "internal_gains"), where=season)),
+    }
+    total = sum(gains.values())
+    if total <= 0:
+        return "Main driver of cooling: none, there is no need for cooling."
+    name = max(gains, key=lambda key: gains[key])
+    share = 100 * gains[name] / total
+    return f"Main driver of cooling: {name}, {share:.0f} % of the gains of the cooled zones in months with cooling."
+
+
+def _months(canvas: Canvas, row: int, building: BuildingResult) -> None:
+    """Rows 17 to 37: the needs month by month and their chart."""
+    _heading(canvas, row, "Month by month")
+    canvas.titles(row + 1, ("kWh", *MONTHS, "Year"))
+    canvas.height(row + 1, 16)
+    needs = ("heating_need", "cooling_need")
+    for place, field in enumerate(needs, start=row + 2):
+        need: Months = getattr(building, field)
+        canvas.put(place, 1, label_of(BuildingResult, field), BODY)
+        digits = digits_for([float(np.sum(need))])
+        canvas.numbers(place, 2, need, NUMBER, digits)
+        canvas.put(place, LAST, float(np.sum(need)), NUMBER, digits)
+        canvas.height(place, 15)
+    canvas.space(row + 4, 38)
+    series = [
+        Bars(Area.across(place, 1, 1), Area.across(place, 2, 13), colour)
+        for place, colour in ((row + 2, VERMILLION), (row + 3, SKY))
+    ]
+    titles = ("Heating and cooling need of the building", "kWh per month")
+    add_columns(canvas.sheet, Area(row + 5, 1, row + 20, LAST), titles, Area.across(row + 1, 2, 13), series)
+
+
+def _grouped(losses: Sequence[ElementLoss]) -> list[tuple[str, float, float]]:
+    """Title, loss [kWh] and share [%] of each kind of loss, always in the same order."""
+    sums = {title: [0.0, 0.0] for title in (*LOSS_GROUPS.values(), OTHER)}
+    for loss in losses:
+        group = sums[LOSS_GROUPS.get(loss.kind, OTHER)]
+        group[0] += loss.loss
+        group[1] += loss.share
+    return [(title, *values) for title, values in sums.items() if title != OTHER or any(values)]  # type: ignore[misc]
+
+
+def _losses(canvas: Canvas, row: int, results: Results) -> None:
+    """Rows 39 to 54: the losses by kind and their chart."""
+    _heading(canvas, row, "Where the heat goes in months with heating")
+    canvas.put(row + 1, 1, "Loss", HEAD)
+    canvas.merged(row + 1, 2, 3, "kWh a year", HEAD_NUMBER)
+    canvas.merged(row + 1, 4, 5, "Share [%]", HEAD_NUMBER)
+    groups = _grouped(results.element_losses)
+    digits = digits_for([loss for _, loss, _ in groups])
+    for place, group in enumerate(groups, start=row + 2):
+        _loss_row(canvas, place, group, (BODY, NUMBER), digits)
+    total = ("Sum", sum(loss for _, loss, _ in groups), sum(share for _, _, share in groups))
+    _loss_row(canvas, row + 2 + len(groups), total, (TOTAL, NUMBER_TOTAL), digits)
+    canvas.space(row + 1, row + 15)
+    first, last = row + 2, row + 1 + len(groups)
+    values = Bars(Area.across(row + 1, 2, 2), Area.down(2, first, last), BLUE)
+    titles = ("Losses by kind", "kWh a year")
+    add_bars(canvas.sheet, Area(row + 1, 6, row + 15, LAST), titles, Area.down(1, first, last), [values])
+
+
+def _loss_row(
+    canvas: Canvas, row: int, group: tuple[str, float, float], styles: tuple[Style, Style], digits: str
+) -> None:
+    canvas.put(row, 1, group[0], styles[0])
+    for first, value, number_format in ((2, group[1], digits), (4, group[2], '0.0;-0.0;"–"')):
+        canvas.merged(row, first, first + 1, value, styles[1]).number_format = number_format
+
+
+def _last_words(canvas: Canvas, row: int, results: Results) -> None:
+    """From row 56: what to doubt, and the cautions."""
+    checks = sum(note.kind == "check" for note in results.notes)
+    words = {0: "No figure asks for a second look.", 1: "1 check asks for a second look: see sheet Notes."}
+    text = words.get(checks, f"{checks} checks ask for a second look: see sheet Notes.")
+    cell = canvas.merged(row, 1, LAST, text, replace(LINK, border=LONG.border) if checks else LONG)
+    canvas.link(cell, NOTES)
+    canvas.height(row, 16)
+    _heading(canvas, row + 1, "Cautions")
+    for place, caution in enumerate(CAUTIONS, start=row + 2):
+        canvas.merged(place, 1, LAST, caution, SMALL)
+        canvas.fit_merged(place, 1, LAST, caution, size=8.5)
+
+
+def _heading(canvas: Canvas, row: int, text: str) -> None:
+    canvas.put(row, 1, text, SECTION)
+    canvas.height(row, 18)

@@ -1,0 +1,475 @@
+"""Result sheets from made-up results: places, sums, texts, charts, print set-up, rendering."""
+
+from __future__ import annotations
+
+import re
+import shutil
+import subprocess
+from dataclasses import replace
+from io import BytesIO
+from pathlib import Path
+from typing import Any
+from zipfile import ZipFile
+
+import numpy as np
+import pytest
+from lxml import etree
+from openpyxl import Workbook, load_workbook
+from openpyxl.worksheet.worksheet import Worksheet
+
+from heatledger.results import (
+    BuildingResult,
+    BuildUpResult,
+    ClimateResult,
+    ElementLoss,
+    LayerResult,
+    Note,
+    OpeningGains,
+    ProjectResult,
+    Results,
+    ZoneResult,
+    label_of,
+)
+from heatledger.workbook.guide import CAUTIONS
+from heatledger.workbook.result_sheets import RESULT_SHEETS, build_result_sheets
+
+MONTHS = ["Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec"]
+OUTDOOR = np.array([1.2, 2.5, 6.0, 10.1, 14.6, 18.2, 19.6, 19.1, 15.4, 10.2, 5.3, 2.1])
+COLD = (20 - OUTDOOR) / 18.8
+WARM = np.clip(OUTDOOR - 15, 0, None) / 5.3
+SUN = np.array([28, 44, 80, 112, 140, 150, 158, 138, 98, 62, 32, 22]) / 158
+DRAWING = "{http://schemas.openxmlformats.org/drawingml/2006/chart}"
+
+
+def _zone(name: str, conditioning: str, area: float) -> ZoneResult:
+    none = np.zeros(12)
+    off = conditioning == "unconditioned"
+    solar, internal = 3.2 * area * SUN, np.full(12, 0.9 * area)
+    losses, gains = 14.0 * area * COLD, solar + internal
+    ratio = gains / losses
+    utilisation = (1 - ratio**3.4) / (1 - ratio**4.4)
+    need = none if off else losses - utilisation * gains
+    cooling = 1.8 * area * WARM if conditioning == "heated and cooled" else none
+    return ZoneResult(
+        name=name,
+        conditioning=conditioning,
+        floor_area=area,
+        heating_need=need,
+        cooling_need=cooling,
+        transmission_heating=0.65 * losses,
+        ventilation_heating=0.35 * losses,
+        transmission_cooling=0.65 * (losses + 2.5 * area),
+        ventilation_cooling=0.35 * (losses + 2.5 * area),
+        solar_gains=solar,
+        internal_gains=internal,
+        gain_ratio=ratio,
+        gain_utilisation=utilisation,
+        loss_ratio=gains / (losses + 2.5 * area),
+        loss_utilisation=np.clip(SUN, 0, 1),
+        exponent=3.4,
+        time_constant=36.2,
+        heat_capacity=165 * area,
+        transmission_coefficient=0.9 * area,
+        ventilation_coefficient=0.48 * area,
+        heating_set_point=20.0,
+        cooling_set_point=26.0,
+        temperature=OUTDOOR + 6 if off else np.full(12, 20.0),
+        adjustment_factor=0.62,
+    )
+
+
+def _losses(zones: list[ZoneResult], each: int) -> tuple[ElementLoss, ...]:
+    kinds = ["wall", "opening", "roof", "ground floor", "air leakage", "ventilation", "thermal bridge", "partition"]
+    rows = [
+        (f"{kind.capitalize()} {number + 1}", zone.name, kind, 900.0 * zone.floor_area / (place * 7 + number + 9))
+        for zone in zones
+        if zone.conditioning != "unconditioned"
+        for place, kind in enumerate(kinds)
+        for number in range(each)
+    ]
+    inside = [zone for zone in zones if zone.conditioning != "unconditioned"]
+    total = sum(float(np.sum(zone.transmission_heating + zone.ventilation_heating)) for zone in inside)
+    scale = total / sum(loss for *_, loss in rows)
+    ranked = sorted(rows, key=lambda row: -row[-1])
+    return tuple(
+        ElementLoss(
+            name, zone, kind, "outdoors", 24.5, 0.31, loss * scale / 80, loss * scale, 100 * loss * scale / total
+        )
+        for name, zone, kind, loss in ranked
+    )
+
+
+def _build_up(name: str, layers: int) -> BuildUpResult:
+    materials = ["Gypsum plaster", "Brick 1800", "Mineral wool, board", "Air layer, unventilated", "Lime render"]
+    rows = tuple(LayerResult(materials[k % 5], 15.0 + 60 * k, None if k == 3 else 0.7, 0.3) for k in range(layers))
+    temperatures = tuple(np.linspace(20, -10, layers + 3).tolist())
+    return BuildUpResult(name, "horizontal", rows, 240.0, 0.17 + 0.3 * layers, 0.28, 61.4, temperatures)
+
+
+def make_results(zones: int = 4, project: str = "Reading room & workshop", name: str = "Zone {}") -> Results:
+    """Results of a plausible building; the last of several zones is an unheated stair."""
+    kinds = ["heated", "heated and cooled"]
+    made = [_zone(name.format(k + 1), kinds[k % 2], 60.0 + 7 * k) for k in range(max(zones - 1, 1))]
+    if zones > 1:
+        made.append(_zone("Stair", "unconditioned", 18.0))
+    inside = [zone for zone in made if zone.conditioning != "unconditioned"]
+    building = BuildingResult(
+        sum(zone.floor_area for zone in inside),
+        np.sum([zone.heating_need for zone in inside], axis=0),
+        np.sum([zone.cooling_need for zone in inside], axis=0),
+    )
+    openings = tuple(
+        OpeningGains(f"O-{k + 1:02}", zone.name, 45.0 * k, 90.0, 1.8, 1.3, 0.58, 158 * SUN, 42.0 * SUN)
+        for zone in inside
+        for k in range(3)
+    )
+    notes = (
+        Note("check", "The floor height of 1.7 m lies outside 2 to 6 m.", "Zones", "F6"),
+        Note("default", "Leakage n50 [1/h]: 6 (common practice for an untested older building).", "Zones", "K6"),
+        Note("default", "=SUM(A1) stays a text.", "Air systems", "F7"),
+        Note("method", "Utilisation of gains: ISO 13790:2008, 12.2.1.", "", ""),
+        Note("source", "Weather: a made-up typical year.", "Project", "B9"),
+    )
+    return Results(
+        ProjectResult(project, "=Client", "A. Assessor", "2026-017", "1 Long Lane", "EN ISO 52016-1:2017", "external",
+                      270.0, 1162.0),
+        ClimateResult("made-up", "none", 45.0, 8.0, OUTDOOR, 158 * SUN),
+        tuple(made),
+        building,
+        _losses(made, 3),
+        openings,
+        (_build_up("Outer wall, brick, insulated", 4), _build_up("Roof", 5)),
+        notes,
+    )  # fmt: skip
+
+
+@pytest.fixture(scope="module")
+def results() -> Results:
+    return make_results()
+
+
+@pytest.fixture(scope="module")
+def data(results: Results) -> bytes:
+    return build_result_sheets(results)
+
+
+@pytest.fixture(scope="module")
+def book(data: bytes) -> Workbook:
+    return load_workbook(BytesIO(data))
+
+
+def texts(sheet: Worksheet) -> list[str]:
+    return [cell.value for row in sheet.iter_rows() for cell in row if isinstance(cell.value, str)]
+
+
+def row_of(sheet: Worksheet, label: str, after: int = 0) -> int:
+    return next(row for row in range(after + 1, sheet.max_row + 1) if sheet.cell(row, 1).value == label)
+
+
+def numbers(sheet: Worksheet, row: int, first: int, count: int = 12) -> list[Any]:
+    return [sheet.cell(row, column).value for column in range(first, first + count)]
+
+
+def test_sheets_stand_in_the_agreed_order(book: Workbook) -> None:
+    agreed = "Summary Monthly_need Monthly_balance Element_losses Solar_gains Build-up_results Notes"
+    assert [title.replace(" ", "_") for title in book.sheetnames] == agreed.split()
+    assert book.sheetnames == list(RESULT_SHEETS)
+
+
+def test_the_file_is_the_same_for_the_same_results(data: bytes) -> None:
+    assert build_result_sheets(make_results()) == data
+
+
+def test_monthly_need_holds_every_zone_and_its_sums(book: Workbook, results: Results) -> None:
+    sheet = book["Monthly need"]
+    for field in ("heating_need", "cooling_need"):
+        top = row_of(sheet, label_of(ZoneResult, field))
+        for place, zone in enumerate(results.zones[:-1], start=1):
+            need = getattr(zone, field)
+            assert sheet.cell(top + place, 1).value == zone.name
+            assert numbers(sheet, top + place, 3) == pytest.approx(need.tolist())
+            assert sheet.cell(top + place, 15).value == pytest.approx(need.sum())
+            assert sheet.cell(top + place, 16).value == pytest.approx(need.sum() / zone.floor_area)
+        total = row_of(sheet, "Building", top)
+        above = [numbers(sheet, row, 3, 13) for row in range(top + 1, total)]
+        assert numbers(sheet, total, 3, 13) == pytest.approx(np.sum(above, axis=0).tolist())
+
+
+def test_monthly_balance_of_the_building_closes(book: Workbook) -> None:
+    sheet = book["Monthly balance"]
+    rows = range(7, 13)
+    assert [sheet.cell(row, 1).value for row in rows] == [
+        "Heating need [kWh]",
+        "Internal gains [kWh]",
+        "Solar gains less sky losses [kWh]",
+        "Transmission [kWh]",
+        "Ventilation [kWh]",
+        "Gains not used [kWh]",
+    ]
+    assert np.sum([numbers(sheet, row, 2, 13) for row in rows], axis=0) == pytest.approx(np.zeros(13), abs=1e-9)
+
+
+def test_monthly_balance_shows_both_modes_of_a_zone(book: Workbook, results: Results) -> None:
+    sheet, zone = book["Monthly balance"], results.zones[1]
+    top = row_of(sheet, "Zone 2 · heated and cooled · 67.0 m²")
+    assert numbers(sheet, top + 1, 2) == pytest.approx(OUTDOOR.tolist())
+    shown = "solar_gains internal_gains transmission_heating ventilation_heating gain_utilisation heating_need "
+    shown += "transmission_cooling ventilation_cooling loss_ratio loss_utilisation cooling_need"
+    for field in shown.split():
+        row = row_of(sheet, label_of(ZoneResult, field), top)
+        assert numbers(sheet, row, 2) == pytest.approx(getattr(zone, field).tolist())
+    for field in ("exponent", "time_constant", "transmission_coefficient", "ventilation_coefficient"):
+        assert sheet.cell(row_of(sheet, label_of(ZoneResult, field), top), 2).value == pytest.approx(
+            getattr(zone, field)
+        )
+
+
+def test_a_temperature_has_a_mean_of_the_year_weighted_by_days(book: Workbook) -> None:
+    sheet = book["Monthly balance"]
+    days = [31, 28, 31, 30, 31, 30, 31, 31, 30, 31, 30, 31]
+    expected = sum(t * d for t, d in zip(OUTDOOR, days, strict=True)) / 365
+    assert sheet.cell(row_of(sheet, "Outdoor temperature [°C]"), 14).value == pytest.approx(expected)
+
+
+def test_an_unconditioned_zone_shows_temperature_and_factor(book: Workbook) -> None:
+    sheet = book["Monthly balance"]
+    top = row_of(sheet, "Stair · unconditioned · 18.0 m²")
+    below = [sheet.cell(row, 1).value for row in range(top + 1, sheet.max_row + 1)]
+    assert "Temperature in heating mode [°C]" in below
+    assert "Adjustment factor b [-]" in below
+    assert "Heating need [kWh]" not in below
+
+
+def test_element_losses_are_ranked_and_summed(book: Workbook, results: Results) -> None:
+    sheet = book["Element losses"]
+    count = len(results.element_losses)
+    losses: list[Any] = [sheet.cell(row, 9).value for row in range(25, 25 + count)]
+    assert losses == sorted(losses, reverse=True)
+    assert sheet.cell(24, 9).value == "Loss in months with heating [kWh/a]"
+    assert sheet.cell(25 + count, 2).value == "Sum"
+    assert sheet.cell(25 + count, 9).value == pytest.approx(sum(losses))
+    assert sheet.cell(25 + count, 10).value == pytest.approx(100)
+
+
+def test_solar_gains_hold_both_tables(book: Workbook, results: Results) -> None:
+    sheet = book["Solar gains"]
+    for field in ("irradiation", "gains"):
+        top = row_of(sheet, label_of(OpeningGains, field))
+        assert numbers(sheet, top + 1, 8) == pytest.approx(getattr(results.opening_gains[0], field).tolist())
+    total = sum(float(opening.gains.sum()) for opening in results.opening_gains)
+    assert sheet.cell(row_of(sheet, "Building"), 20).value == pytest.approx(total)
+
+
+def test_build_up_results_hold_a_temperature_behind_every_layer(book: Workbook, results: Results) -> None:
+    sheet, build_up = book["Build-up results"], results.build_ups[0]
+    top = row_of(sheet, "Inside air")
+    count = len(build_up.layers) + 3
+    assert [sheet.cell(top + k, 6).value for k in range(count)] == pytest.approx(build_up.surface_temperatures)
+    assert sheet.cell(top + count - 1, 1).value == "Outside air"
+    assert sheet.cell(top + 2, 1).value == "Gypsum plaster"
+    assert sheet.cell(top + 5, 4).value == "–"
+
+
+def test_notes_are_grouped_and_lead_to_their_cells(book: Workbook) -> None:
+    sheet = book["Notes"]
+    groups = [text for text in texts(sheet) if re.search(r": (\d+|none)$", text)]
+    assert groups == [
+        "Please look at these again: 1",
+        "Defaults used for empty cells: 2",
+        "Method, step by step: 1",
+        "Sources of data: 1",
+    ]
+    links = {cell.value: cell.hyperlink.location for cell in sheet["A"] if cell.hyperlink}
+    assert links == {
+        "Zones!F6": "'Zones'!F6",
+        "Zones!K6": "'Zones'!K6",
+        "Air systems!F7": "'Air systems'!F7",
+        "Project!B9": "'Project'!B9",
+    }
+
+
+def test_summary_says_what_matters(book: Workbook, results: Results) -> None:
+    shown = texts(book["Summary"])
+    need = results.building.heating_need
+    top = results.element_losses[0]
+    assert "Reading room & workshop" in shown
+    assert f"Jan, {need[0]:,.0f} kWh" in shown
+    assert (
+        f"Largest single loss: {top.name} ({top.kind}, {top.zone}), {top.loss:,.0f} kWh a year, "
+        f"{top.share:.0f} % of the losses." in shown
+    )
+    assert any(text.startswith("Main driver of heating: walls, ") for text in shown)
+    assert any(text.startswith("Main driver of cooling: solar gains, ") for text in shown)
+    assert "1 check asks for a second look: see sheet Notes." in shown
+    assert set(CAUTIONS) <= set(shown)
+
+
+def test_summary_sums_agree(book: Workbook, results: Results) -> None:
+    sheet = book["Summary"]
+    heating = row_of(sheet, "Heating need [kWh]")
+    assert numbers(sheet, heating, 2) == pytest.approx(results.building.heating_need.tolist())
+    assert sheet.cell(heating, 14).value == pytest.approx(results.building.heating_need.sum())
+    total = row_of(sheet, "Sum")
+    walls = row_of(sheet, "Walls")
+    groups: list[Any] = [sheet.cell(row, 2).value for row in range(walls, total)]
+    assert sheet.cell(total, 2).value == pytest.approx(sum(groups))
+    assert sheet.cell(total, 2).value == pytest.approx(sum(loss.loss for loss in results.element_losses))
+
+
+def test_places_do_not_move_when_figures_change(results: Results) -> None:
+    zones = tuple(replace(zone, heating_need=zone.heating_need * 3) for zone in results.zones)
+    changed = replace(results, zones=zones, element_losses=results.element_losses[:3], notes=())
+    before, after = (load_workbook(BytesIO(build_result_sheets(each))) for each in (results, changed))
+    for title in ("Summary", "Monthly need", "Monthly balance"):
+        places = [
+            {cell.coordinate: cell.value for row in book[title].iter_rows() for cell in row if cell.column == 1}
+            for book in (before, after)
+        ]
+        moved = {cell for cell, value in places[0].items() if value != places[1].get(cell)}
+        words = {str(places[0][cell]).partition(":")[0] for cell in moved}
+        allowed = {
+            "Largest single loss",
+            "Main driver of heating",
+            "Main driver of cooling",
+            "1 check asks for a second look",
+        }
+        assert words <= allowed, title
+
+
+def test_typed_text_stays_text(book: Workbook) -> None:
+    cells = [cell for sheet in book for row in sheet.iter_rows() for cell in row if str(cell.value).startswith("=")]
+    assert {cell.value for cell in cells} == {"=Client", "=SUM(A1) stays a text."}
+
+
+def test_no_formula_is_written(data: bytes) -> None:
+    with ZipFile(BytesIO(data)) as package:
+        sheets = [name for name in package.namelist() if name.startswith("xl/worksheets/sheet")]
+        assert all(b"<f>" not in package.read(name) and b"NaN" not in package.read(name) for name in sheets)
+
+
+def test_what_does_not_exist_shows_as_a_dash(results: Results) -> None:
+    broken = replace(results.zones[0], gain_ratio=np.full(12, np.nan), time_constant=float("inf"))
+    sheets = load_workbook(BytesIO(build_result_sheets(replace(results, zones=(broken, *results.zones[1:])))))
+    sheet = sheets["Monthly balance"]
+    top = row_of(sheet, "Zone 1 · heated · 60.0 m²")
+    assert numbers(sheet, row_of(sheet, label_of(ZoneResult, "gain_ratio"), top), 2) == ["–"] * 12
+    assert sheet.cell(row_of(sheet, label_of(ZoneResult, "time_constant"), top), 2).value == "–"
+
+
+def test_odd_texts_are_cleaned(results: Results) -> None:
+    project = replace(results.project, project="Bell\x07 house", client="x" * 40_000)
+    sheet = load_workbook(BytesIO(build_result_sheets(replace(results, project=project))))["Summary"]
+    assert sheet["A1"].value == "Bell house"
+    assert max(len(text) for text in texts(sheet)) == 32_767
+
+
+def _charts(data: bytes) -> list[etree._Element]:
+    with ZipFile(BytesIO(data)) as package:
+        names = sorted(name for name in package.namelist() if re.fullmatch(r"xl/charts/chart\d+\.xml", name))
+        return [etree.fromstring(package.read(name)) for name in names]
+
+
+def _words(element: etree._Element) -> str:
+    return "".join(str(part) for part in element.itertext("{http://schemas.openxmlformats.org/drawingml/2006/main}t"))
+
+
+def test_charts_show_their_axes_with_units(data: bytes) -> None:
+    charts = _charts(data)
+    assert len(charts) == 6
+    for chart in charts:
+        for axis in ("catAx", "valAx"):
+            assert [found.get("val") for found in chart.iterfind(f".//{DRAWING}{axis}/{DRAWING}delete")] == ["0"]
+        units = [_words(title) for title in chart.iterfind(f".//{DRAWING}valAx/{DRAWING}title")]
+        assert len(units) == 1
+        assert units[0].startswith("kWh")
+        assert _words(next(chart.iterfind(f"{DRAWING}chart/{DRAWING}title")))
+        assert next(chart.iter(f"{DRAWING}overlay")).get("val") == "0"
+
+
+def test_charts_carry_their_values(data: bytes, results: Results) -> None:
+    chart = _charts(data)[0]
+    series = chart.find(f".//{DRAWING}ser")
+    assert series is not None
+    formulas = [found.text for found in series.iter(f"{DRAWING}f")]
+    assert formulas == ["'Summary'!$A$19", "'Summary'!$B$18:$M$18", "'Summary'!$B$19:$M$19"]
+    stored = [float(value.text or "nan") for value in series.iterfind(f"{DRAWING}val//{DRAWING}v")]
+    assert stored == pytest.approx(results.building.heating_need.tolist())
+    assert [value.text for value in series.iterfind(f"{DRAWING}cat//{DRAWING}v")] == MONTHS
+
+
+def test_chart_fonts_and_colours_are_named(data: bytes) -> None:
+    for chart in _charts(data):
+        fonts = {
+            found.get("typeface")
+            for found in chart.iter("{http://schemas.openxmlformats.org/drawingml/2006/main}latin")
+        }
+        assert fonts == {"Arial"}
+        assert not list(chart.iter("{http://schemas.openxmlformats.org/drawingml/2006/main}schemeClr"))
+
+
+def test_cells_name_their_font_and_use_plain_colours(book: Workbook) -> None:
+    cells = [cell for sheet in book for row in sheet.iter_rows() for cell in row if cell.value is not None]
+    assert {cell.font.name for cell in cells} == {"Arial"}
+    assert {cell.font.color.type for cell in cells} == {"rgb"}
+
+
+def test_every_sheet_prints_on_a4_with_its_project_named(book: Workbook) -> None:
+    sheets: list[Any] = book.worksheets
+    for sheet in sheets:
+        assert sheet.page_setup.paperSize == 9
+        assert sheet.sheet_properties.pageSetUpPr.fitToPage
+        assert sheet.page_setup.fitToWidth == 1
+        assert sheet.page_setup.fitToHeight == (1 if sheet.title == "Summary" else 0)
+        assert sheet.oddFooter.left.text == "Reading room && workshop"
+        assert sheet.oddFooter.center.text == "&A · &D"
+        assert sheet.oddFooter.right.text == "Page &P of &N"
+    rows = {sheet.title: sheet.print_title_rows for sheet in book}
+    assert rows == {
+        "Summary": None,
+        "Monthly need": "$22:$22",
+        "Monthly balance": "$5:$5",
+        "Element losses": "$24:$24",
+        "Solar gains": "$5:$5",
+        "Build-up results": None,
+        "Notes": "$4:$4",
+    }
+
+
+def test_a_project_name_of_digits_does_not_change_the_footer_size(results: Results) -> None:
+    named = replace(results, project=replace(results.project, project="12 Elm Street"))
+    with ZipFile(BytesIO(build_result_sheets(named))) as package:
+        footer = etree.fromstring(package.read("xl/worksheets/sheet1.xml")).findtext(".//{*}oddFooter")
+    assert footer is not None
+    assert footer.startswith('&L&"Arial,Regular"&8 12 Elm Street&C')
+
+
+@pytest.mark.skipif(shutil.which("soffice") is None, reason="LibreOffice is not installed")
+def test_pages_render(tmp_path: Path) -> None:
+    """One zone and 25: each sheet takes the pages it should, each page is numbered, no number is too wide."""
+    small = make_results(1, name="Ζώνη {} 閲覧室")
+    large = make_results(25, name="A zone with quite a long name, number {}")
+    large = replace(large, element_losses=large.element_losses[:40], opening_gains=large.opening_gains[:20])
+    needs = large.building.heating_need * 1e4
+    large = replace(large, building=replace(large.building, heating_need=needs))
+    for name, results in (("small", small), ("large", large)):
+        (tmp_path / f"{name}.xlsx").write_bytes(build_result_sheets(results))
+    files = [str(tmp_path / f"{name}.xlsx") for name in ("small", "large")]
+    home = f"-env:UserInstallation=file://{tmp_path / 'office'}"
+    convert = ["soffice", home, "--headless", "--convert-to", "pdf", "--outdir", str(tmp_path), *files]
+    subprocess.run(convert, check=True, capture_output=True, timeout=180)
+    assert _pages(tmp_path / "small.pdf", small) == [1, 1, 2, 2, 1, 2, 1]
+    assert _pages(tmp_path / "large.pdf", large) == [1, 4, 25, 3, 3, 2, 1]
+
+
+def _pages(pdf: Path, results: Results) -> list[int]:
+    """Printed pages of each sheet."""
+    command = ["pdftotext", "-layout", str(pdf), "-"]
+    text = subprocess.run(command, check=True, capture_output=True, timeout=60).stdout.decode()
+    assert "###" not in text
+    for zone in results.zones:
+        assert zone.name.split()[0] in text
+    pages = text.split("\f")[:-1]
+    for number, page in enumerate(pages, start=1):
+        assert f"Page {number} of {len(pages)}" in page
+        assert results.project.project in page
+    return [sum(f"{title} · " in page for page in pages) for title in RESULT_SHEETS]

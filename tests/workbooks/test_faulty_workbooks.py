@@ -1,0 +1,693 @@
+"""Faulty workbooks, made by code: the sentences a user meets, by their full text, from cells and from a real file."""
+
+from __future__ import annotations
+
+from datetime import date
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+import pytest
+
+from heatledger.errors import InputError
+from heatledger.inputs.cells import Cell
+from heatledger.inputs.workbook_rows import check_rows
+from heatledger.workbook.reader import read_cells
+
+if TYPE_CHECKING:
+    from tests.conftest import Book, Changes
+
+FAULTS: dict[str, tuple[Changes, list[str]]] = {
+    # cells of the wrong kind
+    "decimal comma": (
+        {"Openings!E5": "1,2"},
+        [
+            "Openings!E5  Width [m]: found the text '1,2';"
+            " expected a number above 0 and at most 50. Type 1.2 as a number.",
+        ],
+    ),
+    "number with the unit of the column": (
+        {"Build-ups!D5": "250 mm"},
+        [
+            "Build-ups!D5  Thickness [mm]: found the text '250 mm';"
+            " expected a number above 0 and at most 5000. Type 250 as a number.",
+        ],
+    ),
+    "number with another unit": (
+        {"Openings!E5": "1200 mm"},
+        [
+            "Openings!E5  Width [m]: found the text '1200 mm';"
+            " expected a number above 0 and at most 50. Convert it to m and type the number alone.",
+        ],
+    ),
+    "percent as text": (
+        {"Glazed units!D5": "35 %"},
+        [
+            "Glazed units!D5  Frame share [%]: found the text '35 %';"
+            " expected a number from 0 to 100, in percent. Type 35 as a number.",
+        ],
+    ),
+    "percent as text where a share belongs": (
+        {"Glazed units!C5": "60 %"},
+        [
+            "Glazed units!C5  g-value [-]: found the text '60 %'; expected a number from 0 to 1. Type 0.6 as a number.",
+        ],
+    ),
+    "percent stored as a fraction": (
+        {"Air systems!F6": 0.8},
+        [
+            "Air systems!F6  Heat recovery [%]: found 0.8;"
+            " expected 0, or a number above 1 and at most 98, in percent. Type 80 for 80 %.",
+        ],
+    ),
+    "comma that may group thousands": (
+        {"Zones!E5": "1,200"},
+        [
+            "Zones!E5  Floor area [m²]: found the text '1,200';"
+            " expected a number above 0 and at most 1000000. Type 1200 or 1.200 as a number.",
+        ],
+    ),
+    "words in a number cell": (
+        {"Zones!E5": "about sixty"},
+        [
+            "Zones!E5  Floor area [m²]: found the text 'about sixty';"
+            " expected a number above 0 and at most 1000000. Type a number, without unit or words.",
+        ],
+    ),
+    "number with a unit in a cell without unit": (
+        {"Openings!D5": "2 pieces"},
+        [
+            "Openings!D5  Number: found the text '2 pieces';"
+            " expected a whole number from 1 to 10000. Type a number, without unit or words.",
+        ],
+    ),
+    "text of two lines": (
+        {"Zones!E5": "sixty\nor so"},
+        [
+            "Zones!E5  Floor area [m²]: found the text 'sixty or so';"
+            " expected a number above 0 and at most 1000000. Type a number, without unit or words.",
+        ],
+    ),
+    "long text": (
+        {"Zones!E5": "to be measured on site once the scaffolding of the neighbours has gone"},
+        [
+            "Zones!E5  Floor area [m²]: found the text 'to be measured on site once the scaffolding of the neighbou…';"
+            " expected a number above 0 and at most 1000000. Type a number, without unit or words.",
+        ],
+    ),
+    "date": (
+        {"Zones!E5": date(2024, 2, 1)},
+        [
+            "Zones!E5  Floor area [m²]: found the date 2024-02-01;"
+            " expected a number above 0 and at most 1000000."
+            " Format the cell as a number and type the value again.",
+        ],
+    ),
+    "date in a name": (
+        {"Zones!A6": date(2024, 2, 1)},
+        [
+            "Zones!A6  Zone: found the date 2024-02-01;"
+            " expected a text. Format the cell as text and type the value again.",
+        ],
+    ),
+    "boolean": (
+        {"Zones!I5": True},
+        [
+            "Zones!I5  Heating set-point [°C]: found the logical value TRUE;"
+            " expected a number from 0 to 40. Type a number from 0 to 40.",
+        ],
+    ),
+    "boolean in a dropdown": (
+        {"Air systems!G6": True},
+        [
+            "Air systems!G6  Bypass in cooling: found the logical value TRUE;"
+            " expected one of: yes, no. Type one of: yes, no.",
+        ],
+    ),
+    "error value": (
+        {"Envelope!G5": "#REF!"},
+        [
+            "Envelope!G5  Area [m²]: found the error value #REF!;"
+            " expected a number above 0 and at most 1000000. Mend the formula or type the value.",
+        ],
+    ),
+    "formula that was never calculated": (
+        {"Envelope!G5": "=4*5"},
+        [
+            "Envelope!G5  Area [m²]: found a formula without a stored value;"
+            " expected a number above 0 and at most 1000000."
+            " Open and save the file in your spreadsheet program, then run again.",
+        ],
+    ),
+    "broken number": (
+        {"Envelope!G5": Cell("1.2.3", "text")},
+        [
+            "Envelope!G5  Area [m²]: found the text '1.2.3';"
+            " expected a number above 0 and at most 1000000. Type a number, without unit or words.",
+        ],
+    ),
+    "fraction where a whole number belongs": (
+        {"Openings!D5": 2.5},
+        [
+            "Openings!D5  Number: found 2.5; expected a whole number from 1 to 10000. Type a whole number.",
+        ],
+    ),
+    "words where a whole number belongs": (
+        {"Build-ups!B5": "first"},
+        [
+            "Build-ups!B5  Layer: found the text 'first';"
+            " expected a whole number from 1 to 50. Type a number, without unit or words.",
+        ],
+    ),
+    # bounds
+    "zero area": (
+        {"Envelope!G5": 0},
+        [
+            "Envelope!G5  Area [m²]: found 0;"
+            " expected a number above 0 and at most 1000000. Type a value in m² within these limits.",
+        ],
+    ),
+    "far too large": (
+        {"Zones!F5": 2e7},
+        [
+            "Zones!F5  Air volume [m³]: found 20000000;"
+            " expected a number above 0 and at most 10000000. Type a value in m³ within these limits.",
+        ],
+    ),
+    "negative thickness": (
+        {"Build-ups!D5": -250},
+        [
+            "Build-ups!D5  Thickness [mm]: found -250;"
+            " expected a number above 0 and at most 5000. Type a value in mm within these limits.",
+        ],
+    ),
+    "recovery above the limit": (
+        {"Air systems!F6": 120},
+        [
+            "Air systems!F6  Heat recovery [%]: found 120;"
+            " expected a number from 0 to 98, in percent. Type a value in % within these limits.",
+        ],
+    ),
+    "share above one": (
+        {"Glazed units!C5": 60},
+        [
+            "Glazed units!C5  g-value [-]: found 60; expected a number from 0 to 1. Correct the value.",
+        ],
+    ),
+    "azimuth beyond the circle": (
+        {"Envelope!H6": 400},
+        [
+            "Envelope!H6  Azimuth [°]: found 400;"
+            " expected degrees from north clockwise, 0 to 360, or a compass direction such as N, NNE, NE."
+            " Type a value in ° within these limits.",
+        ],
+    ),
+    "layer zero": (
+        {"Build-ups!B7": 0},
+        [
+            "Build-ups!B7  Layer: found 0; expected a whole number from 1 to 50. Correct the value.",
+        ],
+    ),
+    # required cells and words
+    "empty required cell": (
+        {"Zones!E5": None},
+        [
+            "Zones!E5  Floor area [m²]: found an empty cell;"
+            " expected a number above 0 and at most 1000000. Fill in the cell.",
+        ],
+    ),
+    "white space in a required cell": (
+        {"Zones!E5": "  "},
+        [
+            "Zones!E5  Floor area [m²]: found an empty cell;"
+            " expected a number above 0 and at most 1000000. Fill in the cell.",
+        ],
+    ),
+    "missing name": (
+        {"Thermal bridges!A5": None},
+        [
+            "Thermal bridges!A5  Thermal bridge: found an empty cell;"
+            " expected a text. Fill in the name, or clear the whole row.",
+        ],
+    ),
+    "missing project name": (
+        {"Project!B4": None},
+        [
+            "Project!B4  Project: found an empty cell; expected a text. Fill in the cell.",
+        ],
+    ),
+    "wrong word": (
+        {"Envelope!C5": "wal"},
+        [
+            "Envelope!C5  Kind: found the text 'wal';"
+            " expected one of: wall, roof, floor, door, partition. Did you mean 'wall'?",
+        ],
+    ),
+    "unknown word": (
+        {"Zones!B5": "warm"},
+        [
+            "Zones!B5  Conditioning: found the text 'warm';"
+            " expected one of: heated, heated and cooled, unconditioned. Choose from the list of the cell.",
+        ],
+    ),
+    "wrong word on Project": (
+        {"Project!B8": "sheltred"},
+        [
+            "Project!B8  Site exposure: found the text 'sheltred';"
+            " expected one of: open, normal, sheltered. Did you mean 'sheltered'?",
+        ],
+    ),
+    "unknown azimuth": (
+        {"Envelope!H5": "sunny"},
+        [
+            "Envelope!H5  Azimuth [°]: found the text 'sunny';"
+            " expected degrees from north clockwise, 0 to 360, or a compass direction such as N, NNE, NE."
+            " Type degrees, or one of: N, NNE, NE, ENE, E, ESE, SE, SSE, S, SSW, SW, WSW, W, WNW, NW, NNW.",
+        ],
+    ),
+    "azimuth written out": (
+        {"Envelope!H5": "South-East"},
+        [
+            "Envelope!H5  Azimuth [°]: found the text 'South-East';"
+            " expected degrees from north clockwise, 0 to 360, or a compass direction such as N, NNE, NE."
+            " Did you mean 'SE'?",
+        ],
+    ),
+    "azimuth with a degree sign": (
+        {"Envelope!H5": "180°"},
+        [
+            "Envelope!H5  Azimuth [°]: found the text '180°';"
+            " expected degrees from north clockwise, 0 to 360, or a compass direction such as N, NNE, NE."
+            " Type 180 as a number.",
+        ],
+    ),
+    # names
+    "zone that does not exist": (
+        {"Envelope!B5": "Hous"},
+        [
+            "Envelope!B5  Zone: found 'Hous'; expected a name from sheet Zones. Did you mean 'House'?",
+        ],
+    ),
+    "zone unlike any other": (
+        {"Envelope!B8": "Conservatory"},
+        [
+            "Envelope!B8  Zone: found 'Conservatory';"
+            " expected a name from sheet Zones."
+            " Add 'Conservatory' to sheet Zones, or choose from the list of the cell.",
+        ],
+    ),
+    "faces an unknown space": (
+        {"Envelope!D8": "outdoor"},
+        [
+            "Envelope!D8  Faces: found 'outdoor';"
+            " expected outdoors, neighbour, or a name from sheet Zones. Did you mean 'outdoors'?",
+        ],
+    ),
+    "build-up without layers": (
+        {"Envelope!E5": "Cavity brickwork"},
+        [
+            "Envelope!E5  Build-up: found 'Cavity brickwork';"
+            " expected a name from sheet Build-ups."
+            " Add 'Cavity brickwork' to sheet Build-ups, or choose from the list of the cell.",
+        ],
+    ),
+    "unknown material": (
+        {"Build-ups!C6": "Wolle"},
+        [
+            "Build-ups!C6  Material: found 'Wolle';"
+            " expected unventilated air layer, slightly ventilated air layer, "
+            "well ventilated air layer, or a name from sheet Materials."
+            " Did you mean 'Wool'?",
+        ],
+    ),
+    "unknown usage": (
+        {"Zones!C5": "Office"},
+        [
+            "Zones!C5  Usage: found 'Office';"
+            " expected a name from sheet Usage. Add 'Office' to sheet Usage, or choose from the list of the cell.",
+        ],
+    ),
+    "unknown air system": (
+        {"Zones!D5": "Window"},
+        [
+            "Zones!D5  Air system: found 'Window'; expected a name from sheet Air systems. Did you mean 'Windows'?",
+        ],
+    ),
+    "unknown element": (
+        {"Openings!B5": "Southwall"},
+        [
+            "Openings!B5  Element: found 'Southwall'; expected a name from sheet Envelope. Did you mean 'South wall'?",
+        ],
+    ),
+    "unknown glazed unit": (
+        {"Openings!C5": "Triple"},
+        [
+            "Openings!C5  Glazed unit: found 'Triple';"
+            " expected a name from sheet Glazed units."
+            " Add 'Triple' to sheet Glazed units, or choose from the list of the cell.",
+        ],
+    ),
+    "unknown zone of a bridge and a floor": (
+        {"Ground floors!B5": "Cellar", "Thermal bridges!B5": "Cellar"},
+        [
+            "Ground floors!B5  Zone: found 'Cellar';"
+            " expected a name from sheet Zones. Add 'Cellar' to sheet Zones, or choose from the list of the cell.",
+            "Thermal bridges!B5  Zone: found 'Cellar';"
+            " expected a name from sheet Zones. Add 'Cellar' to sheet Zones, or choose from the list of the cell.",
+        ],
+    ),
+    "duplicate name": (
+        {"Envelope!A6": " south WALL"},
+        [
+            "Envelope!A6  Element: found 'south WALL' a second time, first in A5;"
+            " expected each name once. Rename one of the two rows.",
+        ],
+    ),
+    "zone named outdoors": (
+        {"Zones!A6": "Outdoors", "Envelope!B8": "House", "Envelope!D7": "outdoors"},
+        [
+            "Zones!A6  Zone: found 'Outdoors'; expected a name other than outdoors and neighbour. Rename the zone.",
+        ],
+    ),
+    # between cells and sheets
+    "both build-up and U-value": (
+        {"Envelope!F5": 0.35},
+        [
+            "Envelope!F5  U-value [W/(m²·K)]: found both the build-up 'Wall' and the U-value 0.35;"
+            " expected one of the two. Clear one of the two cells.",
+        ],
+    ),
+    "neither build-up nor U-value": (
+        {"Ground floors!F5": None},
+        [
+            "Ground floors!F5  Build-up: found neither a build-up nor a U-value;"
+            " expected one of the two. Choose a build-up or type a U-value.",
+        ],
+    ),
+    "missing azimuth": (
+        {"Envelope!H6": None},
+        [
+            "Envelope!H6  Azimuth [°]: found an empty cell;"
+            " expected the direction of an element that faces outdoors."
+            " Type degrees from north clockwise, or N, NE, E …",
+        ],
+    ),
+    "missing azimuth of a tilted roof": (
+        {"Envelope!H8": None},
+        [
+            "Envelope!H8  Azimuth [°]: found an empty cell;"
+            " expected the direction of an element that faces outdoors."
+            " Type degrees from north clockwise, or N, NE, E …",
+        ],
+    ),
+    "openings larger than their element": (
+        {"Openings!D5": 12},
+        [
+            "Envelope!G5  Area [m²]: found 20 m² with 21.60 m² of openings in 'South wall';"
+            " expected an area that holds its openings."
+            " Correct the gross area, or the sizes and number on sheet Openings.",
+        ],
+    ),
+    "gap in the layers": (
+        {"Build-ups!B6": 3},
+        [
+            "Build-ups!B6  Layer: found layer 3 of 'Wall';"
+            " expected layer 2. Number the layers from 1 without gaps, the inside layer first.",
+        ],
+    ),
+    "layer twice": (
+        {"Build-ups!B6": 1},
+        [
+            "Build-ups!B6  Layer: found layer 1 of 'Wall' a second time;"
+            " expected layer 2. Number the layers from 1 without gaps, the inside layer first.",
+        ],
+    ),
+    "set-points of a usage crossed": (
+        {"Usage!B5": 28},
+        [
+            "Usage!C5  Cooling set-point [°C]: found 28 °C for heating and 26 °C for cooling;"
+            " expected cooling not below heating. Correct one of the two set-points.",
+        ],
+    ),
+    "set-points of a zone crossed": (
+        {"Zones!I5": 27},
+        [
+            "Zones!I5  Heating set-point [°C]: found 27 °C for heating and 26 °C for cooling;"
+            " expected cooling not below heating. Correct one of the two set-points.",
+        ],
+    ),
+    "cooling set-point of a zone below the usage": (
+        {"Zones!J5": 19},
+        [
+            "Zones!J5  Cooling set-point [°C]: found 20 °C for heating and 19 °C for cooling;"
+            " expected cooling not below heating. Correct one of the two set-points.",
+        ],
+    ),
+    "heat recovery on extract": (
+        {"Air systems!B6": "extract"},
+        [
+            "Air systems!F6  Heat recovery [%]: found 80 % for a system of kind extract;"
+            " expected 0 or an empty cell, since only a balanced system recovers heat."
+            " Clear the cell, or set the kind to balanced.",
+        ],
+    ),
+    "fans without rate": (
+        {"Air systems!D6": None},
+        [
+            "Air systems!D6  Rate [1/h or m³/(h·m²)]: found an empty cell;"
+            " expected the rate of a system with fans. Fill in the rate, or choose rate basis usage.",
+        ],
+    ),
+    "rate beside rate basis usage": (
+        {"Air systems!C6": "usage"},
+        [
+            "Air systems!D6  Rate [1/h or m³/(h·m²)]: found 1.2;"
+            " expected an empty cell, since the rate follows the usage."
+            " Clear the rate, or choose another rate basis.",
+        ],
+    ),
+    "rate of usage without usage": (
+        {"Zones!D6": "Fans", "Air systems!C6": "usage", "Air systems!D6": None},
+        [
+            "Zones!C6  Usage: found an empty cell;"
+            " expected a usage, since the air system's rate follows it."
+            " Choose a usage, or an air system with another rate basis.",
+        ],
+    ),
+    "heated zone without usage": (
+        {"Zones!C5": None},
+        [
+            "Zones!C5  Usage: found an empty cell;"
+            " expected the usage of a conditioned zone. Choose a row of sheet Usage.",
+        ],
+    ),
+    "no heated zone": (
+        {"Zones!B5": "unconditioned"},
+        [
+            "Zones!B5  Conditioning: found unconditioned zones only;"
+            " expected at least one heated zone. Set the conditioning of at least one zone to heated.",
+        ],
+    ),
+    "no zone at all": (
+        {
+            **{f"{sheet}!{row}:{row}": None for sheet in ("Zones", "Envelope", "Openings") for row in range(5, 9)},
+            **{"Ground floors!5:5": None, "Thermal bridges!5:5": None},
+        },
+        ["Zones: found no zone; expected at least one heated zone. Fill in a row for each zone."],
+    ),
+    "heated zone without envelope": (
+        {"Zones!A7": "Annexe", "Zones!B7": "heated", "Zones!C7": "Dwelling", "Zones!E7": 20, "Zones!F7": 50},
+        [
+            "Zones!A7  Zone: found 'Annexe' without envelope;"
+            " expected at least one element or ground floor. Add the elements of 'Annexe' to sheet Envelope.",
+        ],
+    ),
+    "heated zone with inner walls only": (
+        {
+            **{"Zones!A7": "Annexe", "Zones!B7": "heated", "Zones!C7": "Dwelling", "Zones!E7": 20, "Zones!F7": 50},
+            **{"Envelope!A9": "Inner wall", "Envelope!B9": "Annexe", "Envelope!C9": "partition"},
+            **{"Envelope!D9": "Annexe", "Envelope!E9": "Wall", "Envelope!G9": 10},
+        },
+        [
+            "Zones!A7  Zone: found 'Annexe' without envelope;"
+            " expected at least one element or ground floor. Add the elements of 'Annexe' to sheet Envelope.",
+        ],
+    ),
+    "unconditioned zone without heat path": (
+        {"Envelope!7:7": None, "Envelope!D8": "neighbour"},
+        [
+            "Zones!A6  Zone: found 'Loft' without any heat path;"
+            " expected an element to outdoors or to a conditioned zone, or a ground floor."
+            " Add the elements of 'Loft' to sheet Envelope.",
+        ],
+    ),
+    "bridge half filled": (
+        {"Thermal bridges!D5": None, "Thermal bridges!E5": 3},
+        [
+            "Thermal bridges!D5  Linear transmittance ψ [W/(m·K)]: found an empty cell;"
+            " expected length and ψ together. Fill in the cell.",
+            "Thermal bridges!F5  Point transmittance χ [W/K]: found an empty cell;"
+            " expected number and χ together. Fill in the cell.",
+        ],
+    ),
+    "bridge of nothing": (
+        {"Thermal bridges!C5": None, "Thermal bridges!D5": None},
+        [
+            "Thermal bridges!C5  Length [m]: found neither a linear nor a point bridge;"
+            " expected one of the two. Fill in length and ψ, or number and χ.",
+        ],
+    ),
+    # sheets and titles
+    "missing sheet": (
+        {"Envelope": None},
+        [
+            "Envelope: found no such sheet; expected a sheet named Envelope. Copy it from a fresh template.",
+        ],
+    ),
+    "missing usage sheet": (
+        {"Usage": None},
+        [
+            "Usage: found no such sheet; expected a sheet named Usage. Copy it from a fresh template.",
+        ],
+    ),
+    "renamed required sheet": (
+        {"Zones": "Zone list"},
+        [
+            "Zones: found no such sheet; expected a sheet named Zones. Rename 'Zone list' to 'Zones'.",
+        ],
+    ),
+    "renamed optional sheet": (
+        {"Openings": "Opening"},
+        [
+            "Openings: found no such sheet; expected a sheet named Openings. Rename 'Opening' to 'Openings'.",
+        ],
+    ),
+    "missing column": (
+        {"Zones!E4": None},
+        [
+            "Zones  Floor area [m²]: found no title 'Floor area';"
+            " expected the column Floor area. Add it, or copy the titles from a fresh template.",
+        ],
+    ),
+    "renamed column": (
+        {"Zones!E4": "Floor aera"},
+        [
+            "Zones  Floor area [m²]: found no title 'Floor area';"
+            " expected the column Floor area. Rename 'Floor aera' to 'Floor area'.",
+        ],
+    ),
+    "renamed optional column": (
+        {"Envelope!J4": "Solar absorbtance"},
+        [
+            "Envelope  Solar absorptance [-]: found no title 'Solar absorptance';"
+            " expected the column Solar absorptance. Rename 'Solar absorbtance' to 'Solar absorptance'.",
+        ],
+    ),
+    "renamed label": (
+        {"Project!A5": "Weather file"},
+        [
+            "Project  Weather: found no title 'Weather';"
+            " expected the label Weather. Rename 'Weather file' to 'Weather'.",
+        ],
+    ),
+    "missing label": (
+        {"Project!A5": None, "Project!B5": None},
+        [
+            "Project  Weather: found no title 'Weather';"
+            " expected the label Weather. Add it, or copy the titles from a fresh template.",
+        ],
+    ),
+    "label twice": (
+        {"Project!A10": "Weather", "Project!B10": "Miami FL"},
+        [
+            "Project!A10  Weather: found the title 'Weather' a second time;"
+            " expected each title once. Rename or delete one of the two.",
+        ],
+    ),
+    "title twice": (
+        {"Openings!G4": "Width"},
+        [
+            "Openings!G4  Width [m]: found the title 'Width' a second time;"
+            " expected each title once. Rename or delete one of the two.",
+        ],
+    ),
+    "no header row": (
+        {"Thermal bridges!4:4": None},
+        [
+            "Thermal bridges: found no header row;"
+            " expected a row with the titles Thermal bridge, Zone."
+            " Copy the header row from a fresh template, or restore the titles.",
+        ],
+    ),
+    "changed unit": (
+        {"Build-ups!D3": "cm"},
+        [
+            "Build-ups!D3  Thickness [mm]: found the unit 'cm';"
+            " expected 'mm'. Convert the values to mm and restore the unit.",
+        ],
+    ),
+    "changed unit on Project": (
+        {"Project!C6": "ft"},
+        [
+            "Project!C6  Altitude [m]: found the unit 'ft';"
+            " expected 'm'. Convert the values to m and restore the unit.",
+        ],
+    ),
+    # several at once, in the order of the workbook
+    "many at once": (
+        {
+            "Thermal bridges!B5": "Hause",
+            "Openings!E5": "1,2",
+            "Envelope!G7": None,
+            "Envelope!C7": "ceiling",
+            "Envelope!B6": "Hose",
+            "Build-ups!D6": "100mm",
+            "Zones!E5": "#VALUE!",
+            "Project!B5": None,
+        },
+        [
+            "Project!B5  Weather: found an empty cell; expected a text. Fill in the cell.",
+            "Zones!E5  Floor area [m²]: found the error value #VALUE!;"
+            " expected a number above 0 and at most 1000000. Mend the formula or type the value.",
+            "Build-ups!D6  Thickness [mm]: found the text '100mm';"
+            " expected a number above 0 and at most 5000. Type 100 as a number.",
+            "Envelope!B6  Zone: found 'Hose'; expected a name from sheet Zones. Did you mean 'House'?",
+            "Envelope!C7  Kind: found the text 'ceiling';"
+            " expected one of: wall, roof, floor, door, partition. Choose from the list of the cell.",
+            "Envelope!G7  Area [m²]: found an empty cell;"
+            " expected a number above 0 and at most 1000000. Fill in the cell.",
+            "Openings!E5  Width [m]: found the text '1,2';"
+            " expected a number above 0 and at most 50. Type 1.2 as a number.",
+            "Thermal bridges!B5  Zone: found 'Hause'; expected a name from sheet Zones. Did you mean 'House'?",
+        ],
+    ),
+    "two faults of one row": (
+        {"Envelope!G5": "20 m2", "Envelope!E5": None, "Envelope!H5": None},
+        [
+            "Envelope!E5  Build-up: found neither a build-up nor a U-value;"
+            " expected one of the two. Choose a build-up or type a U-value.",
+            "Envelope!G5  Area [m²]: found the text '20 m2';"
+            " expected a number above 0 and at most 1000000. Type 20 as a number.",
+            "Envelope!H5  Azimuth [°]: found an empty cell;"
+            " expected the direction of an element that faces outdoors."
+            " Type degrees from north clockwise, or N, NE, E …",
+        ],
+    ),
+}
+
+
+@pytest.mark.parametrize("name", FAULTS)
+def test_every_fault_is_told_in_full(cottage: Book, name: str) -> None:
+    changes, sentences = FAULTS[name]
+
+    assert cottage.change(changes).problems() == sentences
+
+
+@pytest.mark.parametrize("name", FAULTS)
+def test_a_real_file_gives_the_same_sentences(cottage: Book, name: str, tmp_path: Path) -> None:
+    changes, sentences = FAULTS[name]
+    file = cottage.change(changes).save(tmp_path / "faulty.xlsx")
+
+    with pytest.raises(InputError) as caught:
+        check_rows(read_cells(file))
+
+    assert str(caught.value).split("\n") == sentences
