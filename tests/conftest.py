@@ -93,7 +93,7 @@ COTTAGE: dict[str, Grid] = {
         (None, None, None, None, None, "W/(m²·K)", "m²", "°", "°", "-"),
         (
             *("Element", "Zone", "Kind", "Faces", "Build-up", "U-value", "Area", "Azimuth", "Tilt"),
-            "Solar absorptance",
+            *("Solar absorptance", "Obstruction"),
         ),
         ("South wall", "House", "wall", "outdoors", "Wall", None, 20, "S"),
         ("North wall", "House", "wall", "outdoors", "Wall", None, 20, 0),
@@ -104,17 +104,42 @@ COTTAGE: dict[str, Grid] = {
         ("Openings",),
         (),
         (None, None, None, None, "m", "m"),
-        ("Opening", "Element", "Glazed unit", "Number", "Width", "Height"),
+        ("Opening", "Element", "Glazed unit", "Number", "Width", "Height", "Obstruction", "Movable shading"),
         ("Window", "South wall", "Double", 2, 1.2, 1.5),
         ("Skylight", "Roof", "Double", None, 0.8, 1),
+    ),
+    "Obstructions": (
+        ("Obstructions",),
+        (),
+        (None, "°", "m", "m", "m", "m", "-"),
+        (
+            *("Obstruction", "Horizon S", "Overhang depth", "Overhang distance", "Left fin depth"),
+            *("Left fin distance", "Reflectance"),
+        ),
+        ("Street", 25, 1.2, 0.3),
+    ),
+    "Shading devices": (
+        ("Shading devices",),
+        (),
+        (None, "-", None, None, None, "W/m²"),
+        (
+            *("Shading device", "Reduction factor", "Device", "Place", "Control", "Irradiance threshold", "Months"),
+            *("Used in heating", "Used in cooling"),
+        ),
+        ("Awning", 0.3),
     ),
     "Ground floors": (
         ("Ground floors",),
         (),
-        (None, None, None, "m²", "m", None, "W/(m²·K)", "m"),
+        (
+            *(None, None, None, "m²", "m", None, "W/(m²·K)", "m", None, None, "m", "m²·K/W", "mm", "m", "W/(m²·K)"),
+            *("m²/m", "m/s", "m²·K/W", "m", None, "m³", "1/h"),
+        ),
         (
             *("Ground floor", "Zone", "Type", "Area", "Exposed perimeter", "Build-up", "U-value"),
-            *("Wall thickness", "Soil"),
+            *("Wall thickness", "Soil", "Edge insulation", "Edge depth", "Edge resistance", "Edge thickness"),
+            *("Height above ground", "Wall U-value above ground", "Vent area", "Wind speed", "Ground insulation"),
+            *("Basement depth", "Basement wall", "Basement volume", "Basement air change"),
         ),
         ("Floor", "House", "slab on ground", 60, 32, "Slab", None, 0.35),
     ),
@@ -122,7 +147,7 @@ COTTAGE: dict[str, Grid] = {
         ("Thermal bridges",),
         (),
         (None, None, "m", "W/(m·K)", None, "W/K"),
-        ("Thermal bridge", "Zone", "Length", "Linear transmittance ψ", "Number", "Point transmittance χ"),
+        ("Thermal bridge", "Zone", "Length", "Linear transmittance ψ", "Number", "Point transmittance χ", "Faces"),
         ("Eaves", "House", 20, 0.1),
     ),
 }

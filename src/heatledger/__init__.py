@@ -10,6 +10,7 @@ from heatledger.errors import InputError, Problem
 
 if TYPE_CHECKING:
     from heatledger.climate.monthly import MonthlyClimate
+    from heatledger.climate.monthly_table import monthly_table_climate
     from heatledger.results import Results
 
 __version__ = "0.1.0"
@@ -22,10 +23,15 @@ __all__ = [
     "__version__",
     "assess",
     "assess_building",
+    "monthly_table_climate",
     "read_workbook",
 ]
 
-_LOADED_WHEN_USED = {"MonthlyClimate": "heatledger.climate.monthly", "Results": "heatledger.results"}
+_LOADED_WHEN_USED = {
+    "MonthlyClimate": "heatledger.climate.monthly",
+    "Results": "heatledger.results",
+    "monthly_table_climate": "heatledger.climate.monthly_table",
+}
 """Names whose modules take time to import; the command line starts without them."""
 
 

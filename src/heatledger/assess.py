@@ -14,7 +14,7 @@ from heatledger.errors import InputError, Problem
 if TYPE_CHECKING:
     from heatledger.building.model import Building
     from heatledger.climate.model import Climate
-    from heatledger.inputs.rows import ProjectRow
+    from heatledger.inputs.rows import Rows
     from heatledger.results import Results
 
 __all__ = ["assess", "assess_building", "read_inputs", "read_workbook"]
@@ -60,9 +60,9 @@ def read_inputs(path: str | Path, climate: Climate | None = None) -> tuple[Build
     """
     opened = [climate] if climate else []
 
-    def weather_problems(project: ProjectRow) -> tuple[Problem, ...]:
+    def weather_problems(rows: Rows) -> tuple[Problem, ...]:
         try:
-            opened.append(_open_weather(project, Path(path).parent))
+            opened.extend(_open_weather(rows, Path(path).parent))
         except InputError as error:
             return error.problems
         return ()
@@ -82,20 +82,25 @@ def read_workbook(path: str | Path) -> Building:
     return _read(path, lambda _: ())
 
 
-def _read(path: str | Path, project_check: Callable[[ProjectRow], tuple[Problem, ...]]) -> Building:
+def _read(path: str | Path, weather_check: Callable[[Rows], tuple[Problem, ...]]) -> Building:
     from heatledger.building.resolve import resolve  # noqa: PLC0415
     from heatledger.inputs.rows import SHEETS  # noqa: PLC0415
     from heatledger.inputs.workbook_rows import check_rows  # noqa: PLC0415
     from heatledger.workbook.reader import read_cells  # noqa: PLC0415
 
     cells = read_cells(Path(path), wanted=[model.sheet for model in SHEETS])
-    return resolve(check_rows(cells, project_check))
+    return resolve(check_rows(cells, weather_check))
 
 
-def _open_weather(project: ProjectRow, folder: Path) -> Climate:
+def _open_weather(rows: Rows, folder: Path) -> tuple[Climate, ...]:
+    """The climate that sheet Project names; none if it is a monthly table with gaps, which are told elsewhere."""
     from heatledger.climate.files import open_climate  # noqa: PLC0415
+    from heatledger.inputs.monthlyclimate import uses_monthly_table  # noqa: PLC0415
 
-    return open_climate(
+    project = rows.project
+    if uses_monthly_table(rows):
+        return _monthly_table(rows)
+    climate = open_climate(
         project.weather,
         folder,
         latitude=project.latitude,
@@ -104,3 +109,28 @@ def _open_weather(project: ProjectRow, folder: Path) -> Climate:
         sheet=project.sheet,
         cell=project.cell("weather"),
     )
+    return (climate,)
+
+
+def _monthly_table(rows: Rows) -> tuple[Climate, ...]:
+    from heatledger.building.monthlytable import monthly_table  # noqa: PLC0415
+    from heatledger.climate.monthly_table import monthly_table_climate  # noqa: PLC0415
+    from heatledger.inputs.rows import MonthlyClimateRow  # noqa: PLC0415
+
+    table, project = monthly_table(rows), rows.project
+    if table is None or project.latitude is None:
+        return ()
+    climate = monthly_table_climate(
+        "Monthly table",
+        table.temperature,
+        table.irradiation,
+        latitude=project.latitude,
+        longitude=project.longitude,
+        time_zone=project.time_zone,
+        altitude=project.altitude,
+        diffuse_share=table.diffuse_share,
+        source="Sheet Monthly climate of the workbook.",
+        sheet=MonthlyClimateRow.sheet,
+        cells=table.cells,
+    )
+    return (climate,)

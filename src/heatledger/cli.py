@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import json
 import sys
-from collections.abc import Callable
+from collections.abc import Callable, Sequence
 from functools import wraps
 from pathlib import Path
 from typing import Any, TypeVar, cast
@@ -12,12 +12,16 @@ from typing import Any, TypeVar, cast
 import click
 
 from heatledger import __version__
-from heatledger.errors import InputError
+from heatledger.errors import InputError, Problem
+from heatledger.terminal import Speaker, list_problems, shown, tell
 
 __all__ = ["main"]
 
 Command = TypeVar("Command", bound=Callable[..., Any])
 WORKBOOK = click.Path(path_type=Path)
+REPORT = click.option(
+    "--report", type=WORKBOOK, help="If there are problems, write a copy of FILE with a sheet that links to each."
+)
 
 
 def _problems_to_exit_status(command: Command) -> Command:
@@ -25,16 +29,39 @@ def _problems_to_exit_status(command: Command) -> Command:
 
     @wraps(command)
     def wrapped(*args: Any, **kwargs: Any) -> Any:
+        report: Path | None = kwargs.pop("report", None)
         try:
             return command(*args, **kwargs)
         except InputError as error:
-            count = len(error.problems)
-            for problem in error.problems:
-                click.echo(str(problem), err=True)
-            click.echo(f"{count} {'problem' if count == 1 else 'problems'}; nothing was written.", err=True)
+            list_problems(error.problems)
+            if report:
+                _write_report(kwargs["file"], error.problems, report)
             sys.exit(1)
 
     return cast("Command", wrapped)
+
+
+def _write_report(file: Path, problems: Sequence[Problem], report: Path) -> None:
+    """A copy of the workbook with a sheet Problems; says so where the file cannot be copied."""
+    from heatledger.workbook.graft import graft
+    from heatledger.workbook.problems_sheet import build_problems_sheet
+
+    try:
+        graft(file, build_problems_sheet(problems, file.name), report)
+    except InputError as error:
+        for problem in error.problems:
+            if problem not in problems:
+                tell(str(problem))
+        tell("No report was written.")
+    else:
+        tell(f"Wrote {shown(report)}: a copy with a sheet Problems.")
+
+
+def _how_much(command: Command) -> Command:
+    """Options for how much is said."""
+    quiet = click.option("--quiet", "-q", is_flag=True, help="Print problems only.")
+    verbose = click.option("--verbose", "-v", is_flag=True, help="Print what was read, written and replaced.")
+    return quiet(verbose(command))
 
 
 @click.group(context_settings={"help_option_names": ["-h", "--help"]})
@@ -68,32 +95,40 @@ def new(file: Path, *, example: bool, force: bool) -> None:
     from heatledger.workbook.template import build_template
 
     create(file, build_template(example_values() if example else blank_values()), force=force)
-    click.echo(f"Wrote {file}.")
+    click.echo(f"Wrote {shown(file)}.")
 
 
 @main.command()
 @click.argument("file", type=WORKBOOK)
+@REPORT
+@_how_much
 @_problems_to_exit_status
-def check(file: Path) -> None:
+def check(file: Path, *, quiet: bool, verbose: bool) -> None:
     r"""Read FILE and its weather and list every problem; nothing is calculated or written.
 
     \b
     Example:
       heatledger check house.xlsx
+      heatledger check house.xlsx --report house-problems.xlsx
     """
     from heatledger.assess import read_inputs
 
     building, climate = read_inputs(file)
+    say = Speaker(quiet=quiet, verbose=verbose)
+    for line in (f"Read {shown(file)}.", f"Read weather {climate.name}: {climate.source}"):
+        say.detail(line)
     counts = f"{len(building.zones)} zones, {len(building.elements)} elements"
-    click.echo(f"{file}: no problems. {counts}, weather {climate.name}.")
+    say.result(f"{shown(file)}: no problems. {counts}, weather {climate.name}.")
 
 
 @main.command()
 @click.argument("file", type=WORKBOOK)
 @click.option("--output", type=WORKBOOK, help="Write the workbook with results here and leave FILE as it is.")
 @click.option("--json", "json_file", type=WORKBOOK, help="Also write the results as JSON.")
+@REPORT
+@_how_much
 @_problems_to_exit_status
-def run(file: Path, output: Path | None, json_file: Path | None) -> None:
+def run(file: Path, *, output: Path | None, json_file: Path | None, quiet: bool, verbose: bool) -> None:
     r"""Calculate the building in FILE and write the result sheets into it.
 
     \b
@@ -106,28 +141,27 @@ def run(file: Path, output: Path | None, json_file: Path | None) -> None:
     from heatledger.workbook.graft import graft
     from heatledger.workbook.result_sheets import build_result_sheets
 
+    say = Speaker(quiet=quiet, verbose=verbose)
     target = output or file
-    _progress("Reading and calculating …")
+    say.progress("Reading and calculating …")
     results = assess(file)
-    _progress("Writing the result sheets …")
+    say.detail(f"Read {shown(file)} and weather {results.climate.name}.")
+    say.progress("Writing the result sheets …")
     report = graft(file, build_result_sheets(results), target)
     if json_file:
         text = json.dumps(results.to_json(), ensure_ascii=False, indent=1, allow_nan=False)
         write_whole(json_file, f"{text}\n".encode())
+        say.detail(f"Wrote {shown(json_file)}.")
+    for done, sheets in (("Added", report.added), ("Replaced", report.replaced), ("Removed", report.dropped)):
+        if sheets:
+            say.detail(f"{done} sheets: {', '.join(sheets)}.")
     for note in report.notes:
-        click.echo(note, err=True)
+        tell(note)
     heating, cooling = results.building.heating_need.sum(), results.building.cooling_need.sum()
     checks = sum(note.kind == "check" for note in results.notes)
-    click.echo(f"Heating need {heating:.0f} kWh, cooling need {cooling:.0f} kWh a year.")
-    click.echo(
-        f"Wrote {target}. {checks} {'point asks' if checks == 1 else 'points ask'} for a second look: sheet Notes."
-    )
-
-
-def _progress(step: str) -> None:
-    """Tell a person at a terminal what takes the time."""
-    if sys.stderr.isatty():
-        click.echo(step, err=True)
+    say.result(f"Heating need {heating:.0f} kWh, cooling need {cooling:.0f} kWh a year.")
+    asks = "point asks" if checks == 1 else "points ask"
+    say.result(f"Wrote {shown(target)}. {checks} {asks} for a second look: sheet Notes.")
 
 
 @main.group()
@@ -167,17 +201,7 @@ def weather_show(name: str) -> None:
       heatledger weather show measured.epw
     """
     from heatledger.climate.files import open_climate
-    from heatledger.climate.model import MONTH_NAMES
-    from heatledger.climate.summary import monthly_summary
+    from heatledger.climate.summary import summary_lines
 
-    climate = open_climate(name, Path())
-    columns = monthly_summary(climate)
-    click.echo(f"{climate.name}, {climate.latitude:.2f}°, {climate.longitude:.2f}°, {climate.altitude:.0f} m")
-    for note in climate.notes:
-        click.echo(note)
-    titles = [f"{column.title} [{column.unit}]" for column in columns]
-    click.echo("  ".join(["month    ", *titles]))
-    for month, label in enumerate((*MONTH_NAMES, "year")):
-        values = [column.values[month] if month < len(MONTH_NAMES) else column.year for column in columns]
-        cells = [f"{value:{len(title)}.1f}" for value, title in zip(values, titles, strict=True)]
-        click.echo("  ".join([f"{label:9}", *cells]))
+    for line in summary_lines(open_climate(name, Path())):
+        click.echo(line)

@@ -15,10 +15,12 @@ if TYPE_CHECKING:
     import pandas as pd
 
 __all__ = [
+    "BuildUpComparison",
     "BuildUpResult",
     "BuildingResult",
     "ClimateResult",
     "ElementLoss",
+    "GroundFloorResult",
     "LayerResult",
     "Months",
     "Note",
@@ -96,11 +98,18 @@ class ZoneResult:
     transmission_cooling: Months = _quantity("Transmission in cooling mode", "kWh")
     ventilation_cooling: Months = _quantity("Ventilation in cooling mode", "kWh")
     solar_gains: Months = _quantity("Solar gains less sky losses", "kWh")
+    """In heating mode."""
+    solar_gains_cooling: Months = _quantity("Solar gains less sky losses in cooling mode", "kWh")
     internal_gains: Months = _quantity("Internal gains", "kWh")
     gain_ratio: Months = _quantity("Gains to losses in heating, γ_H", "-")
     gain_utilisation: Months = _quantity("Utilisation of gains, η_H", "-")
     loss_ratio: Months = _quantity("Gains to losses in cooling, γ_C", "-")
     loss_utilisation: Months = _quantity("Utilisation of losses, η_C", "-")
+    heating_season: Months = _quantity("Share of the month in the heating season", "-")
+    cooling_season: Months = _quantity("Share of the month in the cooling season", "-")
+    fan_electricity: Months = _quantity("Fan electricity", "kWh")
+    heating_use: str = _quantity("Heating over the week")
+    cooling_use: str = _quantity("Cooling over the week")
     exponent: float = _quantity("Numerical parameter a (heating)", "-")
     time_constant: float = _quantity("Time constant τ", "h")
     heat_capacity: float = _quantity("Heat capacity", "kJ/K")
@@ -125,6 +134,29 @@ class ElementLoss:
     coefficient: float = _quantity("Coefficient", "W/K")
     loss: float = _quantity("Loss in months with heating", "kWh/a")
     share: float = _quantity("Share of losses", "%")
+    """Of the heat that leaves the conditioned zones; 0 for a path between two of them."""
+    between_zones: bool = field(default=False, metadata={"title": "Between conditioned zones", "unit": ""})
+    """Whether the path leads to another conditioned zone, so that the building loses nothing by it."""
+
+
+@dataclass(frozen=True)
+class GroundFloorResult:
+    """One ground floor by ISO 13370: what it loses steadily, with the swings of the year, and month by month."""
+
+    name: str = _quantity("Ground floor")
+    zone: str = _quantity("Zone")
+    type: str = _quantity("Type")
+    area: float = _quantity("Area that loses heat", "m²")
+    characteristic_dimension: float = _quantity("Characteristic dimension B′", "m")
+    equivalent_thickness: float = _quantity("Equivalent thickness d_t, of a suspended floor d_g", "m")
+    u_value: float = _quantity("U-value with the ground", "W/(m²·K)")
+    coefficient: float = _quantity("Steady coefficient H_g", "W/K")
+    inside_periodic_coefficient: float = _quantity("Periodic coefficient inside H_pi", "W/K")
+    outside_periodic_coefficient: float = _quantity("Periodic coefficient outside H_pe", "W/K")
+    lag: float = _quantity("Lag behind the outdoor temperature β", "months")
+    temperature: Months = _quantity("Equivalent temperature of the ground", "°C")
+    heat_flow_heating: Months = _quantity("Heat flow into the ground in heating mode", "W")
+    heat_flow_cooling: Months = _quantity("Heat flow into the ground in cooling mode", "W")
 
 
 @dataclass(frozen=True)
@@ -138,8 +170,18 @@ class OpeningGains:
     area: float = _quantity("Area", "m²")
     u_value: float = _quantity("U-value", "W/(m²·K)")
     g_value: float = _quantity("g-value with angle", "-")
+    angle_factor: float = _quantity("Factor of the angle F_w", "-")
+    """Mean of the year, weighted by the sun that arrives."""
+    obstruction: str = _quantity("Obstruction")
+    shading_device: str = _quantity("Movable shading")
     irradiation: Months = _quantity("Irradiation on its plane", "kWh/m²")
+    """As if nothing stood before it."""
+    obstruction_factor: Months = _quantity("Shading factor of the obstruction", "-")
+    shading_factor_heating: Months = _quantity("Factor of movable shading in heating mode", "-")
+    shading_factor_cooling: Months = _quantity("Factor of movable shading in cooling mode", "-")
     gains: Months = _quantity("Solar gains", "kWh")
+    """In heating mode."""
+    gains_cooling: Months = _quantity("Solar gains in cooling mode", "kWh")
 
 
 @dataclass(frozen=True)
@@ -161,9 +203,37 @@ class BuildUpResult:
     layers: tuple[LayerResult, ...] = _quantity("Layers")
     thickness: float = _quantity("Thickness", "mm")
     resistance: float = _quantity("Total resistance", "m²·K/W")
+    upper_limit: float = _quantity("Upper limit of the resistance", "m²·K/W")
+    lower_limit: float = _quantity("Lower limit of the resistance", "m²·K/W")
+    error: float = _quantity("Greatest error of the resistance", "%")
+    correction: float = _quantity("Corrections ΔU", "W/(m²·K)")
     u_value: float = _quantity("U-value", "W/(m²·K)")
     internal_heat_capacity: float = _quantity("Heat capacity inside, 24 h", "kJ/(m²·K)")
+    """As the balance takes it, from the inner surface, without its film."""
+    outer_heat_capacity: float = _quantity("Heat capacity outside, 24 h", "kJ/(m²·K)")
+    effective_heat_capacity: float = _quantity("Heat capacity, effective thickness", "kJ/(m²·K)")
+    time_constant: float = _quantity("Time constant κ/U", "h")
+    """Heat capacity inside over U."""
+    inside_capacity: float = _quantity("Areal capacity inside κ1", "kJ/(m²·K)")
+    outside_capacity: float = _quantity("Areal capacity outside κ2", "kJ/(m²·K)")
+    inside_admittance: float = _quantity("Admittance inside", "W/(m²·K)")
+    outside_admittance: float = _quantity("Admittance outside", "W/(m²·K)")
+    periodic_transmittance: float = _quantity("Periodic transmittance", "W/(m²·K)")
+    decrement_factor: float = _quantity("Decrement factor", "-")
+    time_shift: float = _quantity("Time shift", "h")
+    heat_flux: float = _quantity("Heat flux", "W/m²")
+    temperature_factor: float = _quantity("Temperature factor f_Rsi", "-")
+    inside_surface_temperature: float = _quantity("Inside surface temperature", "°C")
     surface_temperatures: tuple[float, ...] = _quantity("Temperatures from inside air to outside air", "°C")
+
+
+@dataclass(frozen=True)
+class BuildUpComparison:
+    """Two build-ups in the same position, and which one holds heat better."""
+
+    first: BuildUpResult = _quantity("First build-up")
+    second: BuildUpResult = _quantity("Second build-up")
+    verdict: str = _quantity("Which holds heat better")
 
 
 @dataclass(frozen=True)
@@ -197,6 +267,9 @@ class Results:
     opening_gains: tuple[OpeningGains, ...]
     build_ups: tuple[BuildUpResult, ...]
     notes: tuple[Note, ...]
+    comparison: BuildUpComparison | None = None
+    """Where two build-ups are named on Project."""
+    ground_floors: tuple[GroundFloorResult, ...] = ()
 
     def zone(self, name: str) -> ZoneResult:
         """The zone of a name; upper and lower case do not matter.
@@ -237,8 +310,9 @@ class Results:
         -------
         dict
             Keys ``project``, ``climate``, ``zones`` (by name), ``building``, ``elements``, ``openings``,
-            ``build_ups`` and ``notes``. Energies in kWh per month, January first; a number that does not
-            exist, such as the ratio of gains to losses in a month without losses, is None.
+            ``build_ups``, ``comparison`` (None without one), ``ground_floors`` and ``notes``. Energies in kWh per
+            month, January first; a number that does not exist, such as the ratio of gains to losses in a month
+            without losses, is None.
         """
         zones = {zone.name: _plain(zone, leave_out=("name",)) for zone in self.zones}
         for zone in self.zones:
@@ -253,6 +327,8 @@ class Results:
             "elements": [_plain(element) for element in self.element_losses],
             "openings": [_plain(opening) for opening in self.opening_gains],
             "build_ups": [_plain(build_up) for build_up in self.build_ups],
+            "comparison": _plain_value(self.comparison),
+            "ground_floors": [_plain(floor) for floor in self.ground_floors],
             "notes": [_plain(note) for note in self.notes],
         }
 
@@ -269,5 +345,7 @@ def _plain_value(value: Any) -> Any:
     if isinstance(value, float) and not np.isfinite(value):
         return None
     if isinstance(value, tuple):
-        return [_plain(part) if hasattr(part, "__dataclass_fields__") else _plain_value(part) for part in value]
+        return [_plain_value(part) for part in value]
+    if hasattr(value, "__dataclass_fields__"):
+        return _plain(value)
     return value

@@ -58,3 +58,61 @@ def building() -> Callable[[Values], Building]:
 @pytest.fixture(scope="session")
 def flat_sky() -> type[FlatSky]:
     return FlatSky
+
+
+MATERIALS: dict[str, tuple[float, float | None, float | None]] = {
+    "Plasterboard": (0.25, 900, 1000),
+    "Wool": (0.038, 30, 1000),
+    "Timber": (0.13, 500, 1600),
+    "Plywood": (0.13, 500, 1600),
+    "Brick": (0.77, 1700, 800),
+    "Aerated block": (0.11, 500, 1000),
+    "Mortar": (0.88, 1800, 1000),
+    "Concrete": (1.8, 2400, 1000),
+    "Stone": (1.0, 2000, 1000),
+    "Insulation": (0.04, 30, 1400),
+    "Render": (1.0, 1200, 1500),
+    "Steel": (50.0, 7800, 450),
+    "Weightless": (0.04, None, None),
+}
+"""Conductivity, density and specific heat of what the tests build with."""
+AIR = {name: f"{name} air layer" for name in ("unventilated", "slightly ventilated", "well ventilated")}
+
+
+def one_wall(layers: Sequence[Mapping[str, Any]], **changes: Any) -> dict[str, list[dict[str, Any]]]:
+    """Rows of a heated room with one element; layers in order, changes of its element."""
+    element = {"name": "W", "zone": "Z", "kind": "wall", "faces": "outdoors", "build_up": "Wall", "area": 30.0}
+    zone = {"name": "Z", "conditioning": "heated", "usage": "U", "floor_area": 50.0, "air_volume": 125.0}
+    materials = {
+        name: {"name": name, "conductivity": conductivity, "density": density, "specific_heat": heat}
+        for name, (conductivity, density, heat) in MATERIALS.items()
+    }
+    return {
+        "Project": [{"project": "P", "weather": "x"}],
+        "Zones": [zone],
+        "Usage": [{"name": "U", "heating_set_point": 20.0, "cooling_set_point": 26.0}],
+        "Materials": [
+            {field: float(value) if isinstance(value, int) else value for field, value in row.items()}
+            for row in materials.values()
+        ],
+        "Build-ups": [
+            {"name": "Wall", "layer": number, **layer, "material": AIR.get(layer["material"], layer["material"])}
+            for number, layer in enumerate(layers, start=1)
+        ],
+        "Envelope": [element | {"azimuth": 180.0} | changes],
+    }
+
+
+def layer(material: str, thickness: float, **more: Any) -> dict[str, Any]:
+    """A row of sheet Build-ups but for its name and number."""
+    return {"material": material, "thickness": float(thickness), **more}
+
+
+@pytest.fixture(scope="session")
+def wall_rows() -> Callable[..., dict[str, list[dict[str, Any]]]]:
+    return one_wall
+
+
+@pytest.fixture(scope="session")
+def make_layer() -> Callable[..., dict[str, Any]]:
+    return layer

@@ -35,7 +35,14 @@ def zone_values(method: str) -> dict[str, list[dict[str, Any]]]:
     system = {"name": "Air", "kind": "natural", "rate": 0.5}
     zone: dict[str, Any] = {"name": "Z", "conditioning": "heated and cooled", "usage": "Use", "air_system": "Air"}
     zone |= {"floor_area": 100.0, "air_volume": 240.0, "heat_capacity": 151.2, "leakage": 0.0}
-    floor: dict[str, Any] = {"name": "F", "zone": "Z", "kind": "floor", "faces": "outdoors", "u_value": 0.5, "area": 200.0}
+    floor: dict[str, Any] = {
+        "name": "F",
+        "zone": "Z",
+        "kind": "floor",
+        "faces": "outdoors",
+        "u_value": 0.5,
+        "area": 200.0,
+    }
     floor |= {"absorptance": 0.0}
     return {
         "Project": [project],

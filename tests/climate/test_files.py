@@ -18,22 +18,13 @@ from heatledger.errors import InputError
 
 WriteEpw = Callable[..., str]
 PVLIB_DATA = Path(pvlib.__file__).parent / "data"
-FORMATS = "an EPW file, a TMY3 file or an hourly table of heatledger"
+FORMATS = "an EPW, TMY3, TMY2, PVGIS or NSRDB file or an hourly table of heatledger"
 
 
 def message(weather: str, folder: Path) -> str:
     with pytest.raises(InputError) as caught:
         open_climate(weather, folder)
     return str(caught.value)
-
-
-def set_cells(column: int, rows: slice | list[int], value: str | float) -> Callable[[pd.DataFrame], pd.DataFrame]:
-    def change(frame: pd.DataFrame) -> pd.DataFrame:
-        frame = frame.astype({column: object})
-        frame.iloc[rows, column] = value
-        return frame
-
-    return change
 
 
 def test_shipped_climates_are_listed_by_name() -> None:
@@ -54,16 +45,23 @@ def test_a_name_is_matched_without_case_and_outer_spaces(tmp_path: Path) -> None
 
 def test_a_name_nearly_right_gets_the_nearest_one(tmp_path: Path) -> None:
     assert message("Greensbro NC", tmp_path) == (
-        "Weather: found the text 'Greensbro NC'; expected the name of a shipped climate or the path of a weather "
-        "file. Did you mean 'Greensboro NC'?"
+        "Weather: found the text 'Greensbro NC'; expected the name of a shipped climate, the path of a weather file, "
+        "or 'monthly table'. Did you mean 'Greensboro NC'?"
+    )
+
+
+def test_a_monthly_table_nearly_named(tmp_path: Path) -> None:
+    assert message("monthly tabel", tmp_path) == (
+        "Weather: found the text 'monthly tabel'; expected the name of a shipped climate, the path of a weather file, "
+        "or 'monthly table'. Did you mean 'monthly table'?"
     )
 
 
 def test_a_name_like_no_other_gets_the_list(tmp_path: Path) -> None:
     assert message("xyz", tmp_path) == (
-        "Weather: found the text 'xyz'; expected the name of a shipped climate or the path of a weather file. "
-        "Shipped climates are Golden CO, Greensboro NC, Miami FL, Moffat County CO, New York NY, Piedmont IT, "
-        "Sand Point AK."
+        "Weather: found the text 'xyz'; expected the name of a shipped climate, the path of a weather file, or "
+        "'monthly table'. Shipped climates are Golden CO, Greensboro NC, Miami FL, Moffat County CO, New York NY, "
+        "Piedmont IT, Sand Point AK."
     )
 
 
@@ -176,79 +174,6 @@ def test_a_tmy3_file_gives_the_shipped_climate(file: str, name: str, station: in
     assert climate.temperature == pytest.approx(expected.temperature, abs=1e-9)
     south = climate.irradiation([90], [180], 0.2)
     assert south == pytest.approx(expected.irradiation([90], [180], 0.2), rel=1e-9)
-
-
-def test_a_day_of_24_hours_only(tmp_path: Path, write_epw: WriteEpw) -> None:
-    assert message(write_epw(lambda frame: frame.iloc[:24]), tmp_path) == (
-        "mine.epw  Weather: found 24 hours; expected 8760 hours. Give a file of one whole year, 1 January to 31 "
-        "December, one row for each hour."
-    )
-
-
-def test_hours_out_of_order(tmp_path: Path, write_epw: WriteEpw) -> None:
-    assert message(write_epw(lambda frame: frame.iloc[[0, 0, *range(2, 8760)]]), tmp_path) == (
-        "mine.epw  Weather: found hour 1 of 1 January; expected hour 2 of 1 January in that row. Put the hours in "
-        "order, each one once, from 1 January to 31 December."
-    )
-
-
-def test_a_leap_day_is_left_out_and_noted(tmp_path: Path, golden: HourlyClimate, write_epw: WriteEpw) -> None:
-    def with_leap_day(frame: pd.DataFrame) -> pd.DataFrame:
-        end = 59 * 24
-        leap_day = frame.iloc[end - 24 : end].copy()
-        leap_day[2], leap_day[6] = 29, 55.0
-        whole = pd.concat([frame.iloc[:end], leap_day, frame.iloc[end:]])
-        whole[0] = 2004
-        return whole
-
-    climate = open_climate(write_epw(with_leap_day), tmp_path)
-    assert climate.notes == ("29 February was left out of the weather file: months are of a 365-day year.",)
-    assert climate.temperature == pytest.approx(golden.temperature, abs=1e-9)
-
-
-def test_codes_for_missing_values_are_all_reported(tmp_path: Path, write_epw: WriteEpw) -> None:
-    def spoil(frame: pd.DataFrame) -> pd.DataFrame:
-        frame = set_cells(13, slice(50, 53), 9999)(frame)
-        return set_cells(6, [8759], 99.9)(frame)
-
-    assert message(write_epw(spoil), tmp_path).splitlines() == [
-        "mine.epw  Weather: found 1 hour without a usable outdoor temperature (first: 99.9 at hour 24 of 31 December); "
-        "expected values from -90 to 60 °C. Fill in the missing outdoor temperature of the weather file or give "
-        "another file.",
-        "mine.epw  Weather: found 3 hours without a usable global horizontal irradiance (first: 9999 at hour 3 of 3 "
-        "January); expected values from 0 to 1500 W/m². Fill in the missing global horizontal irradiance of the "
-        "weather file or give another file.",
-    ]
-
-
-def test_text_among_the_numbers(tmp_path: Path, write_epw: WriteEpw) -> None:
-    assert message(write_epw(set_cells(14, [12], "abc")), tmp_path) == (
-        "mine.epw  Weather: found 1 hour without a usable direct normal irradiance (first: no number at hour 13 of 1 "
-        "January); expected values from 0 to 1500 W/m². Fill in the missing direct normal irradiance of the weather "
-        "file or give another file."
-    )
-
-
-def test_a_year_without_sun(tmp_path: Path, write_epw: WriteEpw) -> None:
-    assert message(write_epw(set_cells(13, slice(None), 0)), tmp_path) == (
-        "mine.epw  Weather: found no global horizontal irradiance in any hour; expected a year with sun. Give a file "
-        "with hourly global, direct and diffuse irradiance."
-    )
-
-
-def test_a_little_below_zero_at_night_is_zero(tmp_path: Path, write_epw: WriteEpw) -> None:
-    climate = open_climate(write_epw(set_cells(13, [0], -3)), tmp_path)
-    assert climate.hours.global_horizontal[0] == 0
-
-
-def test_the_projects_own_table_without_a_column(tmp_path: Path, golden: HourlyClimate) -> None:
-    text = hourly_table(golden.hours, golden.site, 0.5, {"Name": "Mine", "Source": "Measured."})
-    lines = text.replace("Direct normal [W/m²]", "Something else").splitlines(keepends=True)
-    (tmp_path / "mine.csv").write_text("".join(lines), encoding="utf-8")
-    assert message("mine.csv", tmp_path) == (
-        "mine.csv  Weather: found no column of direct normal irradiance; expected values from 0 to 1500 W/m². Fill in "
-        "the missing direct normal irradiance of the weather file or give another file."
-    )
 
 
 def test_a_site_off_the_earth(tmp_path: Path, golden: HourlyClimate) -> None:

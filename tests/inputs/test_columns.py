@@ -52,6 +52,9 @@ def test_units_are_of_the_agreed_set() -> None:
 
     agreed = {"", "-", "%", "°", "°C", "m", "mm", "m²", "m³", "h", "h/d", "W", "1/h", "1/h or m³/(h·m²)"}
     agreed |= {"W/K", "W/(m·K)", "W/(m²·K)", "kJ/(m²·K)", "J/(kg·K)", "kg/m³", "kWh/(m²·a)", "m³/h", "m³/(h·m²)"}
+    agreed |= {"m²·K/W", "m²/m", "m/s", "mm²", "mm²/m", "1/m²", "mm/d", "W·d/(m²·K·mm)"}
+    agreed |= {"m/s", "m²/m", "m²·K/W", "W/m²"}
+    agreed |= {"d", "W/(m³/h)", "kWh/m²"}
     assert units <= agreed
 
 

@@ -28,7 +28,7 @@ def rows(example: Book) -> Rows:
 def test_a_blank_workbook_holds_the_standard_profiles_and_the_materials_only() -> None:
     values = blank_values()
 
-    assert set(values) == {"Usage", "Materials"}
+    assert set(values) == {"Usage", "Materials", "Monthly climate"}
     assert len(values["Materials"]) > 100
 
 
@@ -91,8 +91,12 @@ def test_every_row_of_the_example_is_used(rows: Rows) -> None:
     assert {system.name for system in rows.air_systems} <= used
     assert set(own) <= used
     build_ups = {element.build_up for element in rows.elements} | {floor.build_up for floor in rows.ground_floors}
+    build_ups |= {floor.basement_wall for floor in rows.ground_floors}
     assert {layer.name for layer in rows.build_ups} == build_ups - {""}
     assert {unit.name for unit in rows.glazed_units} == {opening.glazed_unit for opening in rows.openings}
+    behind = {row.obstruction for row in rows.openings} | {element.obstruction for element in rows.elements}
+    assert {obstruction.name for obstruction in rows.obstructions} == behind - {""}
+    assert {device.name for device in rows.shading_devices} == {opening.shading for opening in rows.openings} - {""}
     conditioned = {zone.name for zone in rows.zones if zone.conditioning != "unconditioned"}
     assert {bridge.zone for bridge in rows.thermal_bridges} == conditioned
 
@@ -148,13 +152,47 @@ def test_the_roof_of_the_example_closes(rows: Rows) -> None:
 
 
 def test_the_floors_of_the_example_close(rows: Rows) -> None:
-    """Slabs by outer dimensions; the edge of the wing is its outer walls, that of the house leaves out two sides."""
-    floors = {floor.zone: floor for floor in rows.ground_floors}
+    """Floors by outer dimensions; the edge of the wing is its outer walls, that of the house leaves out two sides.
 
-    assert floors["Workshop"].area + floors["Stair"].area == pytest.approx(14.0 * 9.0)
-    assert floors["Workshop"].perimeter + floors["Stair"].perimeter == pytest.approx(2 * 14.0 + 4.0)
-    assert floors["Reading room"].area == pytest.approx(6.0 * 7.0)
-    assert floors["Reading room"].perimeter == pytest.approx(2 * 6.0 + 2 * 7.0 - 5.0)
+    The cellar is 5.0 m of the house's length at the party wall, so its edge is 5.0 m at the street and at the garden.
+    """
+    floors = {floor.name: floor for floor in rows.ground_floors}
+    house = [floors[name] for name in ("Workshop floor", "Workshop floor over the cellar", "Stair floor")]
+    cellar, wing = house[1], floors["Reading room floor"]
+
+    assert sum(floor.area for floor in house) == pytest.approx(14.0 * 9.0)
+    assert sum(floor.perimeter for floor in house) == pytest.approx(2 * 14.0 + 4.0)
+    assert (cellar.area, cellar.perimeter) == pytest.approx((5.0 * 9.0, 2 * 5.0))
+    assert (wing.area, wing.perimeter) == pytest.approx((6.0 * 7.0, 2 * 6.0 + 2 * 7.0 - 5.0))
+    assert {floor.type for floor in floors.values()} == {"slab on ground", "suspended", "unheated basement"}
+
+
+def test_the_cellar_of_the_example_holds_the_air_between_its_walls(rows: Rows) -> None:
+    """5.0 m less 0.38 m of walls by 9.0 m less two walls of 0.51 m; 1.9 and 0.3 m less the vault of 0.22 m."""
+    (cellar,) = [floor for floor in rows.ground_floors if floor.type == "unheated basement"]
+    height = (cellar.basement_depth or 0.0) + (cellar.height_above_ground or 0.0)
+
+    assert height == pytest.approx(2.2)
+    assert cellar.basement_volume == pytest.approx((5.0 - 0.38) * (9.0 - 1.02) * (height - 0.22), abs=0.5)
+
+
+def test_bridges_to_the_roof_space_are_as_long_as_the_walls_below(rows: Rows) -> None:
+    """The party wall is 9.0 m long; half of the stair's walls (4.0 + 2.5 + 4.0 m) stands beside each flat."""
+    lengths = {(bridge.zone, bridge.length) for bridge in rows.thermal_bridges if bridge.faces == "Roof space"}
+
+    assert lengths == {("Flat 1", 9.0), ("Flat 1", 5.25), ("Flat 2", 5.25)}
+
+
+def test_edges_of_floors_are_as_long_as_their_perimeter(rows: Rows) -> None:
+    edges: Counter[str] = Counter()
+    for bridge in rows.thermal_bridges:
+        if bridge.name.startswith(("Slab edge", "Edge of the vault", "Floor edge")):
+            edges[bridge.zone] += round(1000 * (bridge.length or 0.0))
+    floors: Counter[str] = Counter()
+    for floor in rows.ground_floors:
+        floors[floor.zone] += round(1000 * floor.perimeter)
+
+    assert edges == {zone: length for zone, length in floors.items() if zone != "Stair"}
 
 
 def test_floor_areas_and_heights_of_the_example_are_plausible(rows: Rows) -> None:

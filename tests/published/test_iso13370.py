@@ -149,6 +149,12 @@ def test_heated_basement_vector() -> None:
     assert tuple(map(float, basement)) == pytest.approx((0.3938, 0.4456, 0.4197), abs=5e-5)
 
 
+def test_a_poor_basement_wall_counts_with_its_own_thickness() -> None:
+    # By hand, d_w 1.0 below d_t 1.72: 2·2/(π·2.5)·(1 + 0.5·1.0/3.5)·ln 3.5 = 0.509296·1.142857·1.252763 = 0.72917.
+    basement = heated_basement(100.0, 40.0, 2.5, 2.0, floor_thickness=1.72, wall_thickness=1.0)
+    assert float(basement.wall) == pytest.approx(0.72917, abs=1e-5)
+
+
 def test_unheated_basement_by_hand() -> None:
     # By hand from the basement above: A·U_bf 39.38, z·P·U_bw 44.56, h·P·U_w 0.5·40·1.0 = 20, 0.33·0.3·250 = 24.75 W/K:
     # together 128.69 W/K, 1.2869 on the floor; 1/(1/0.5 + 1/1.2869) = 0.3601.
@@ -212,10 +218,10 @@ def test_the_southern_hemisphere_is_six_months_apart() -> None:
 
 def test_several_floors_at_once() -> None:
     lags = [PHASES["slab"][1], PHASES["slab with vertical edge insulation"][1], PHASES["suspended floor"][1]]
-    ground = equivalent_temperature([80.0, 80.0, 80.0], [40.0, 20.0, 0.0], OUTDOORS, lags)
+    ground = equivalent_temperature([80.0, 80.0, 80.0], [40.0, 20.0, 10.0], OUTDOORS, lags)
     assert ground.shape == (3, 12)
-    assert ground.min(axis=1) == pytest.approx([6.0, 8.0, 10.0], abs=1e-12)
-    assert ground[:2].argmin(axis=1).tolist() == [1, 2]
+    assert ground.min(axis=1) == pytest.approx([6.0, 8.0, 9.0], abs=1e-12)
+    assert ground.argmin(axis=1).tolist() == [1, 2, 0]
 
 
 def test_the_flow_of_a_constant_room_is_that_of_the_equivalent_temperature() -> None:

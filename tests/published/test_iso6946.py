@@ -70,6 +70,11 @@ def test_air_layers_equal_the_table(thickness: int) -> None:
     assert computed == pytest.approx(AIR_LAYERS[thickness], abs=0.005)
 
 
+def test_deep_air_layers_below_a_warm_floor() -> None:
+    # The formula worked out by hand: 0.12·0.1^−0.44 = 0.3305 and 0.12·0.3^−0.44 = 0.2038 beside E·h_r0 4.1727.
+    assert air_layer_resistance([0.1, 0.3], "down") == pytest.approx([0.22207, 0.22849], abs=2e-5)
+
+
 @pytest.mark.parametrize(
     ("depth", "width", "expected"),
     # ISO 6946:2017, D.4, formula recalled from memory; values worked out apart from the project, horizontal, ε 0.9.
@@ -193,7 +198,8 @@ def simplex(points: int) -> tuple[NDArray[np.float64], NDArray[np.float64], NDAr
 
 
 @pytest.mark.parametrize(
-    ("base", "middle", "thick"), [(1.0, 1.2, 3.0), (0.2, 2.0, 8.0), (2.0, 0.01, 0.5), (1, 0, 3), (1, 3, 3)]
+    ("base", "middle", "thick"),
+    [(1.0, 1.2, 3.0), (0.2, 2.0, 8.0), (2.0, 0.01, 0.5), (1, 0, 3), (1, 3, 3), (1, 0.005, 3), (1, 2.995, 3)],
 )
 def test_tapered_layers_equal_integration(base: float, middle: float, thick: float) -> None:
     # The mean of 1/(R_0 + R) over the face, worked out here by Gauss's rule.

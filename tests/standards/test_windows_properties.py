@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 
+import numpy as np
 import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
@@ -63,7 +64,20 @@ def test_a_level_glazing_loses_more() -> None:
 
 
 def test_the_temperature_difference_is_shared_by_resistance() -> None:
-    # A wide and a narrow gap: the sum of both shares is 15 K, and neither order nor splitting changes the glazing.
+    # A wide and a narrow gap of air pass one flux q, so that q/h_1 + q/h_2 is 15 K. With h = r + a·ΔT^0.38 above the
+    # onset of convection: two wide ones at 7.5 K each give a and r, and the balance is checked from them.
+    wide, narrow = Gap(0.03), Gap(0.006)
+    at_half = gap_conductances([wide, wide])[0]
+    still = gap_conductances([narrow, narrow])[0]
+    radiation = 3.69955
+    convection = (at_half - radiation) / 7.5**0.38
+    together = gap_conductances([wide, narrow])
+    flux = 15.0 / np.sum(1 / together)
+    assert together[1] == pytest.approx(still, rel=1e-9)
+    assert together[0] == pytest.approx(radiation + convection * (flux / together[0]) ** 0.38, rel=1e-5)
+
+
+def test_the_order_of_gaps_does_not_matter() -> None:
     gaps = [Gap(0.006, "air"), Gap(0.016, "argon", outer_emissivity=0.05)]
     there, back = gap_conductances(gaps), gap_conductances(gaps[::-1])
     assert there == pytest.approx(back[::-1], rel=1e-6)

@@ -5,7 +5,7 @@ from __future__ import annotations
 import re
 import shutil
 import subprocess
-from dataclasses import replace
+from dataclasses import fields, replace
 from io import BytesIO
 from pathlib import Path
 from typing import Any
@@ -19,6 +19,7 @@ from openpyxl.worksheet.worksheet import Worksheet
 
 from heatledger.results import (
     BuildingResult,
+    BuildUpComparison,
     BuildUpResult,
     ClimateResult,
     ElementLoss,
@@ -31,6 +32,7 @@ from heatledger.results import (
     label_of,
 )
 from heatledger.workbook.guide import CAUTIONS
+from heatledger.workbook.monthly import months_of_need
 from heatledger.workbook.result_sheets import RESULT_SHEETS, build_result_sheets
 
 MONTHS = ["Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec"]
@@ -61,11 +63,17 @@ def _zone(name: str, conditioning: str, area: float) -> ZoneResult:
         transmission_cooling=0.65 * (losses + 2.5 * area),
         ventilation_cooling=0.35 * (losses + 2.5 * area),
         solar_gains=solar,
+        solar_gains_cooling=0.8 * solar,
         internal_gains=internal,
         gain_ratio=ratio,
         gain_utilisation=utilisation,
         loss_ratio=gains / (losses + 2.5 * area),
         loss_utilisation=np.clip(SUN, 0, 1),
+        heating_season=np.where(need > 0, 1.0, 0.0),
+        cooling_season=np.where(cooling > 0, 1.0, 0.0),
+        fan_electricity=np.full(12, 0.1 * area),
+        heating_use="reduced need",
+        cooling_use="continuous",
         exponent=3.4,
         time_constant=36.2,
         heat_capacity=165 * area,
@@ -75,6 +83,28 @@ def _zone(name: str, conditioning: str, area: float) -> ZoneResult:
         cooling_set_point=26.0,
         temperature=OUTDOOR + 6 if off else np.full(12, 20.0),
         adjustment_factor=0.62,
+    )
+
+
+def _opening(name: str, zone: str, azimuth: float) -> OpeningGains:
+    shaded = azimuth > 0
+    return OpeningGains(
+        name=name,
+        zone=zone,
+        azimuth=azimuth,
+        tilt=90.0,
+        area=1.8,
+        u_value=1.3,
+        g_value=0.58,
+        angle_factor=0.9,
+        obstruction="Balcony" if shaded else "",
+        shading_device="Awning" if shaded else "",
+        irradiation=158 * SUN,
+        obstruction_factor=1 - 0.3 * SUN * shaded,
+        shading_factor_heating=np.ones(12),
+        shading_factor_cooling=1 - 0.5 * SUN * shaded,
+        gains=42.0 * SUN,
+        gains_cooling=42.0 * SUN * (1 - 0.5 * SUN * shaded),
     )
 
 
@@ -99,11 +129,36 @@ def _losses(zones: list[ZoneResult], each: int) -> tuple[ElementLoss, ...]:
     )
 
 
-def _build_up(name: str, layers: int) -> BuildUpResult:
+def _build_up(name: str, layers: int, u_value: float = 0.28) -> BuildUpResult:
     materials = ["Gypsum plaster", "Brick 1800", "Mineral wool, board", "Air layer, unventilated", "Lime render"]
     rows = tuple(LayerResult(materials[k % 5], 15.0 + 60 * k, None if k == 3 else 0.7, 0.3) for k in range(layers))
-    temperatures = tuple(np.linspace(20, -10, layers + 3).tolist())
-    return BuildUpResult(name, "horizontal", rows, 240.0, 0.17 + 0.3 * layers, 0.28, 61.4, temperatures)
+    return BuildUpResult(
+        name=name,
+        heat_flow="horizontal, outdoors",
+        layers=rows,
+        thickness=sum(row.thickness for row in rows),
+        resistance=0.17 + 0.3 * layers,
+        upper_limit=3.6,
+        lower_limit=3.4,
+        error=2.9,
+        correction=0.012,
+        u_value=u_value,
+        internal_heat_capacity=61.4,
+        outer_heat_capacity=12.3,
+        effective_heat_capacity=58.0,
+        time_constant=61.4 / u_value / 3.6,
+        inside_capacity=48.2,
+        outside_capacity=11.1,
+        inside_admittance=3.51,
+        outside_admittance=0.92,
+        periodic_transmittance=0.061,
+        decrement_factor=0.218,
+        time_shift=9.4,
+        heat_flux=30 * u_value,
+        temperature_factor=0.96,
+        inside_surface_temperature=18.9,
+        surface_temperatures=tuple(np.linspace(20, -10, layers + 3).tolist()),
+    )
 
 
 def make_results(zones: int = 4, project: str = "Reading room & workshop", name: str = "Zone {}") -> Results:
@@ -118,11 +173,7 @@ def make_results(zones: int = 4, project: str = "Reading room & workshop", name:
         np.sum([zone.heating_need for zone in inside], axis=0),
         np.sum([zone.cooling_need for zone in inside], axis=0),
     )
-    openings = tuple(
-        OpeningGains(f"O-{k + 1:02}", zone.name, 45.0 * k, 90.0, 1.8, 1.3, 0.58, 158 * SUN, 42.0 * SUN)
-        for zone in inside
-        for k in range(3)
-    )
+    openings = tuple(_opening(f"O-{k + 1:02}", zone.name, 45.0 * k) for zone in inside for k in range(3))
     notes = (
         Note("check", "The floor height of 1.7 m lies outside 2 to 6 m.", "Zones", "F6"),
         Note("default", "Leakage n50 [1/h]: 6 (common practice for an untested older building).", "Zones", "K6"),
@@ -130,6 +181,7 @@ def make_results(zones: int = 4, project: str = "Reading room & workshop", name:
         Note("method", "Utilisation of gains: ISO 13790:2008, 12.2.1.", "", ""),
         Note("source", "Weather: a made-up typical year.", "Project", "B9"),
     )
+    pair = (_build_up("Outer wall, brick, insulated", 4), _build_up("Roof", 5, 0.2))
     return Results(
         ProjectResult(project, "=Client", "A. Assessor", "2026-017", "1 Long Lane", "EN ISO 52016-1:2017", "external",
                       270.0, 1162.0),
@@ -138,8 +190,9 @@ def make_results(zones: int = 4, project: str = "Reading room & workshop", name:
         building,
         _losses(made, 3),
         openings,
-        (_build_up("Outer wall, brick, insulated", 4), _build_up("Roof", 5)),
+        pair,
         notes,
+        BuildUpComparison(*pair, "'Roof' holds heat better."),
     )  # fmt: skip
 
 
@@ -195,7 +248,7 @@ def test_monthly_need_holds_every_zone_and_its_sums(book: Workbook, results: Res
         assert numbers(sheet, total, 3, 13) == pytest.approx(np.sum(above, axis=0).tolist())
 
 
-def test_monthly_balance_of_the_building_closes(book: Workbook) -> None:
+def test_monthly_balance_of_the_building_closes(book: Workbook, results: Results) -> None:
     sheet = book["Monthly balance"]
     rows = range(7, 13)
     assert [sheet.cell(row, 1).value for row in rows] == [
@@ -206,7 +259,11 @@ def test_monthly_balance_of_the_building_closes(book: Workbook) -> None:
         "Ventilation [kWh]",
         "Gains not used [kWh]",
     ]
-    assert np.sum([numbers(sheet, row, 2, 13) for row in rows], axis=0) == pytest.approx(np.zeros(13), abs=1e-9)
+    flows = np.array([numbers(sheet, row, 2, 13) for row in rows], dtype=float)
+    assert flows[:, :12].sum(axis=0) == pytest.approx(np.zeros(12), abs=0.5)  # less than half a kWh shows as nothing
+    assert flows[:, 12].sum() == pytest.approx(0, abs=1e-9)
+    assert flows[0, 12] == pytest.approx(results.building.heating_need.sum())
+    assert not np.any((flows < 0) & (flows > -0.5))
 
 
 def test_monthly_balance_shows_both_modes_of_a_zone(book: Workbook, results: Results) -> None:
@@ -251,13 +308,38 @@ def test_element_losses_are_ranked_and_summed(book: Workbook, results: Results) 
     assert sheet.cell(25 + count, 10).value == pytest.approx(100)
 
 
-def test_solar_gains_hold_both_tables(book: Workbook, results: Results) -> None:
+def test_solar_gains_hold_irradiation_and_gains_of_both_modes(book: Workbook, results: Results) -> None:
     sheet = book["Solar gains"]
-    for field in ("irradiation", "gains"):
+    for field in ("irradiation", "gains", "gains_cooling"):
         top = row_of(sheet, label_of(OpeningGains, field))
-        assert numbers(sheet, top + 1, 8) == pytest.approx(getattr(results.opening_gains[0], field).tolist())
-    total = sum(float(opening.gains.sum()) for opening in results.opening_gains)
-    assert sheet.cell(row_of(sheet, "Building"), 20).value == pytest.approx(total)
+        assert numbers(sheet, top + 1, 9) == pytest.approx(getattr(results.opening_gains[0], field).tolist())
+        assert sheet.cell(top + 1, 8).value == 0.9
+        if field != "irradiation":
+            total = sum(float(getattr(opening, field).sum()) for opening in results.opening_gains)
+            assert sheet.cell(row_of(sheet, "Building", top), 21).value == pytest.approx(total)
+
+
+@pytest.mark.parametrize(
+    ("field", "name"),
+    [
+        ("obstruction_factor", "Balcony"),
+        ("shading_factor_cooling", "Awning"),
+    ],
+)
+def test_solar_gains_hold_the_factors_of_shaded_openings(
+    book: Workbook, results: Results, field: str, name: str
+) -> None:
+    """The first opening has neither; the year's factor is weighted by the sun."""
+    sheet, shaded = book["Solar gains"], results.opening_gains[1]
+    row = row_of(sheet, label_of(OpeningGains, field)) + 1
+    factors = getattr(shaded, field)
+    assert [sheet.cell(row, column).value for column in (1, 2, 3)] == [shaded.name, shaded.zone, name]
+    assert numbers(sheet, row, 9) == pytest.approx(factors.tolist())
+    assert sheet.cell(row, 21).value == pytest.approx((factors * SUN).sum() / SUN.sum())
+
+
+def test_factors_that_change_nothing_are_not_shown(book: Workbook) -> None:
+    assert label_of(OpeningGains, "shading_factor_heating") not in texts(book["Solar gains"])
 
 
 def test_build_up_results_hold_a_temperature_behind_every_layer(book: Workbook, results: Results) -> None:
@@ -265,9 +347,65 @@ def test_build_up_results_hold_a_temperature_behind_every_layer(book: Workbook, 
     top = row_of(sheet, "Inside air")
     count = len(build_up.layers) + 3
     assert [sheet.cell(top + k, 6).value for k in range(count)] == pytest.approx(build_up.surface_temperatures)
+    assert [sheet.cell(top + k, 2).value for k in range(count)] == [None, 0, 15, 90, 225, 420, None]
     assert sheet.cell(top + count - 1, 1).value == "Outside air"
     assert sheet.cell(top + 2, 1).value == "Gypsum plaster"
     assert sheet.cell(top + 5, 4).value == "–"
+
+
+def test_build_up_results_show_every_figure(book: Workbook, results: Results) -> None:
+    sheet, build_up = book["Build-up results"], results.build_ups[0]
+    titles = {item.name: label_of(BuildUpResult, item.name) for item in fields(BuildUpResult)}
+    for name in set(titles) - {"layers", "surface_temperatures"}:
+        beside = [
+            sheet.cell(cell.row, column).value
+            for row in sheet.iter_rows()
+            for cell in row
+            if cell.value == titles[name]
+            for column in range(cell.column + 1, cell.column + 4)
+        ]
+        below = [
+            sheet.cell(cell.row + 1, cell.column).value
+            for row in sheet.iter_rows(max_row=5)
+            for cell in row
+            if cell.value == titles[name]
+        ]
+        value = getattr(build_up, name)
+        shown = value if isinstance(value, str) else pytest.approx(value)
+        assert any(found == shown for found in (*beside, *below)), name
+
+
+def test_layers_beyond_a_ventilated_cavity_have_no_temperature(results: Results) -> None:
+    open_ = replace(results.build_ups[0], surface_temperatures=(20.0, 18.0, 17.0, -10.0))
+    data = build_result_sheets(replace(results, build_ups=(open_,), comparison=None))
+    sheet = load_workbook(BytesIO(data))["Build-up results"]
+    top = row_of(sheet, "Inside air")
+    assert [sheet.cell(top + k, 6).value for k in range(7)] == [20, 18, 17, -10, "–", "–", -10]
+
+
+def test_temperature_profiles_are_drawn_over_depth(data: bytes, results: Results) -> None:
+    charts = [chart for chart in _charts(data) if chart.find(f".//{DRAWING}scatterChart") is not None]
+    assert len(charts) == len(results.build_ups) + 1  # and the two side by side
+    values, depths = (
+        [[float(point.text or "") for point in chart.iterfind(f".//{DRAWING}{axis}//{DRAWING}v")] for chart in charts]
+        for axis in ("yVal", "xVal")
+    )
+    assert list(results.build_ups[0].surface_temperatures) in [pytest.approx(found) for found in values]
+    assert [-20, 0, 15, 90, 225, 420, 440] in depths
+    titles = {_words(title) for chart in charts for title in chart.iter(f"{DRAWING}title")}
+    assert {"Depth from the inner surface [mm]", "Temperature [°C]", "Temperatures side by side"} <= titles
+
+
+def test_two_build_ups_stand_side_by_side(book: Workbook, results: Results) -> None:
+    sheet = book["Build-up results"]
+    assert results.comparison is not None
+    assert results.comparison.verdict in texts(sheet)
+    row = row_of(sheet, label_of(BuildUpResult, "u_value"))
+    assert [sheet.cell(row, column).value for column in (2, 3, 5)] == [0.28, 0.2, "the second"]
+    row = row_of(sheet, label_of(BuildUpResult, "time_shift"))
+    assert sheet.cell(row, 5).value == "alike"
+    row = row_of(sheet, label_of(BuildUpResult, "thickness"))
+    assert sheet.cell(row, 5).value is None
 
 
 def test_notes_are_grouped_and_lead_to_their_cells(book: Workbook) -> None:
@@ -314,6 +452,21 @@ def test_summary_sums_agree(book: Workbook, results: Results) -> None:
     groups: list[Any] = [sheet.cell(row, 2).value for row in range(walls, total)]
     assert sheet.cell(total, 2).value == pytest.approx(sum(groups))
     assert sheet.cell(total, 2).value == pytest.approx(sum(loss.loss for loss in results.element_losses))
+
+
+def test_heat_from_a_warmer_space_keeps_the_shares_at_a_hundred(results: Results) -> None:
+    warm = replace(results.element_losses[-1], name="To flat", kind="partition", loss=-800.0, share=-4.8)
+    losses = (*results.element_losses, warm)
+    sheet = load_workbook(BytesIO(build_result_sheets(replace(results, element_losses=losses))))["Summary"]
+    total = row_of(sheet, "Sum")
+    assert sheet.cell(total, 2).value == pytest.approx(sum(loss.loss for loss in losses))
+    assert sheet.cell(total, 4).value == pytest.approx(100)
+
+
+def test_a_kind_without_a_group_is_not_lost(results: Results) -> None:
+    odd = replace(results.element_losses[0], kind="well")
+    sheet = load_workbook(BytesIO(build_result_sheets(replace(results, element_losses=(odd,)))))["Summary"]
+    assert sheet.cell(row_of(sheet, "Other"), 2).value == pytest.approx(odd.loss)
 
 
 def test_places_do_not_move_when_figures_change(results: Results) -> None:
@@ -363,6 +516,20 @@ def test_odd_texts_are_cleaned(results: Results) -> None:
     assert max(len(text) for text in texts(sheet)) == 32_767
 
 
+@pytest.mark.parametrize(
+    ("need", "words"),
+    [
+        ([5, 5, 5, 1, 0, 0, 0, 0, 0, 1, 5, 5], "Oct–Apr"),
+        ([0, 0, 0, 0, 0, 3, 3, 3, 0, 0, 0, 0], "Jun–Aug"),
+        ([9, 0, 0, 9, 0, 0, 0, 0, 0, 0, 0, 0], "Jan, Apr"),
+        ([1] * 12, "all year"),
+        ([0] * 12, "none"),
+    ],
+)
+def test_months_of_need_in_words(need: list[float], words: str) -> None:
+    assert months_of_need(np.array(need, dtype=float)) == words
+
+
 def _charts(data: bytes) -> list[etree._Element]:
     with ZipFile(BytesIO(data)) as package:
         names = sorted(name for name in package.namelist() if re.fullmatch(r"xl/charts/chart\d+\.xml", name))
@@ -374,7 +541,7 @@ def _words(element: etree._Element) -> str:
 
 
 def test_charts_show_their_axes_with_units(data: bytes) -> None:
-    charts = _charts(data)
+    charts = [chart for chart in _charts(data) if chart.find(f".//{DRAWING}scatterChart") is None]
     assert len(charts) == 6
     for chart in charts:
         for axis in ("catAx", "valAx"):
@@ -458,7 +625,7 @@ def test_pages_render(tmp_path: Path) -> None:
     convert = ["soffice", home, "--headless", "--convert-to", "pdf", "--outdir", str(tmp_path), *files]
     subprocess.run(convert, check=True, capture_output=True, timeout=180)
     assert _pages(tmp_path / "small.pdf", small) == [1, 1, 2, 2, 1, 2, 1]
-    assert _pages(tmp_path / "large.pdf", large) == [1, 4, 25, 3, 3, 2, 1]
+    assert _pages(tmp_path / "large.pdf", large) == [1, 4, 26, 3, 5, 2, 1]
 
 
 def _pages(pdf: Path, results: Results) -> list[int]:

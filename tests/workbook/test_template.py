@@ -83,8 +83,8 @@ def last_row(sheet: str) -> int:
 
 
 def test_sheets_stand_in_the_agreed_order(book: Workbook) -> None:
-    agreed = "Project Zones Usage Air_systems Materials Build-ups Glazed_units Envelope Openings Ground_floors "
-    agreed += "Thermal_bridges"
+    agreed = "Project Zones Usage Air_systems Materials Build-ups Glazed_units Envelope Openings Obstructions "
+    agreed += "Shading_devices Ground_floors Thermal_bridges Monthly_climate"
     assert [name.replace(" ", "_") for name in book.sheetnames] == ["Guide", *agreed.split(), "Lists"]
     assert [sheet.title for sheet in book if sheet.sheet_state != "visible"] == ["Lists"]
 
@@ -182,6 +182,12 @@ def test_names_come_from_the_hidden_lists(book: Workbook) -> None:
             assert found.errorStyle == "warning"
 
 
+def test_every_list_has_a_name_of_its_own(book: Workbook) -> None:
+    kinds = {(column.names_from, column.choices) for _, _, column in COLUMNS if column.kind == "name"}
+    names = {validation(book, model, field).formula1 for model, field, column in COLUMNS if column.kind == "name"}
+    assert len(names) == len(kinds)
+
+
 def test_a_direction_may_be_a_word_or_degrees(book: Workbook) -> None:
     model = next(model for model in SHEETS if model.sheet == "Envelope")
     found = validation(book, model, "azimuth")
@@ -251,7 +257,10 @@ def test_lists_work_and_pages_render(tmp_path: Path, data: bytes) -> None:
     for name in list(book.sheetnames):
         book[name].sheet_state = "visible"
     probe = book.create_sheet("Probe", 0)
-    lists = ("list_zones", "list_zones_outdoors", "list_build_ups", "list_envelope", "list_materials_unventilated")
+    envelope, build_ups = ("Envelope", "faces"), ("Build-ups", "material")
+    models = {model.sheet: model for model in SHEETS}
+    faces, material = (validation(book, models[sheet], field).formula1 for sheet, field in (envelope, build_ups))
+    lists = ("list_zones", faces, "list_build_ups", "list_envelope", material)
     for row, name in enumerate(lists, start=1):
         probe.cell(row, 1, f"=ROWS({name})")
         for place in range(1, 6):

@@ -190,7 +190,7 @@ FAULTS: dict[str, tuple[Changes, list[str]]] = {
     "share above one": (
         {"Glazed units!C5": 60},
         [
-            "Glazed units!C5  g-value [-]: found 60; expected a number from 0 to 1. Correct the value.",
+            "Glazed units!C5  g-value [-]: found 60; expected a number from 0 to 1. Type 0.6 if 60 % is meant.",
         ],
     ),
     "azimuth beyond the circle": (
@@ -536,6 +536,140 @@ FAULTS: dict[str, tuple[Changes, list[str]]] = {
             " expected one of the two. Fill in length and ψ, or number and χ.",
         ],
     ),
+    # ground floors by type
+    "negative perimeter": (
+        {"Ground floors!E5": -32},
+        [
+            "Ground floors!E5  Exposed perimeter [m]: found -32;"
+            " expected a number above 0 and at most 100000. Type a value in m within these limits.",
+        ],
+    ),
+    "heated basement without depth and wall": (
+        {"Ground floors!C5": "heated basement"},
+        [
+            "Ground floors!S5  Basement depth [m]: found an empty cell;"
+            " expected the basement depth of a heated basement. Fill in the cell.",
+            "Ground floors!T5  Basement wall: found an empty cell;"
+            " expected the basement wall of a heated basement. Fill in the cell.",
+        ],
+    ),
+    "basement of no depth": (
+        {"Ground floors!C5": "heated basement", "Ground floors!S5": 0, "Ground floors!T5": "Wall"},
+        [
+            "Ground floors!S5  Basement depth [m]: found 0;"
+            " expected a number above 0 and at most 20. Type a value in m within these limits.",
+        ],
+    ),
+    "unheated basement half filled": (
+        {"Ground floors!C5": "unheated basement", "Ground floors!S5": 2, "Ground floors!T5": "Walls"},
+        [
+            "Ground floors!N5  Height above ground [m]: found an empty cell;"
+            " expected the height above ground of an unheated basement. Fill in the cell.",
+            "Ground floors!O5  Wall U-value above ground [W/(m²·K)]: found an empty cell;"
+            " expected the wall U-value above ground of an unheated basement. Fill in the cell.",
+            "Ground floors!T5  Basement wall: found 'Walls';"
+            " expected a name from sheet Build-ups. Did you mean 'Wall'?",
+            "Ground floors!U5  Basement volume [m³]: found an empty cell;"
+            " expected the basement volume of an unheated basement. Fill in the cell.",
+        ],
+    ),
+    "unheated basement wholly below ground": (
+        {
+            **{"Ground floors!C5": "unheated basement", "Ground floors!N5": 0, "Ground floors!S5": 2},
+            **{"Ground floors!T5": "Wall", "Ground floors!U5": "110 m³"},
+        },
+        [
+            "Ground floors!U5  Basement volume [m³]: found the text '110 m³';"
+            " expected a number above 0 and at most 1000000. Type 110 as a number.",
+        ],
+    ),
+    "suspended floor without its fields": (
+        {"Ground floors!C5": "suspended"},
+        [
+            "Ground floors!N5  Height above ground [m]: found an empty cell;"
+            " expected the height above ground of a suspended floor. Fill in the cell.",
+            "Ground floors!O5  Wall U-value above ground [W/(m²·K)]: found an empty cell;"
+            " expected the wall U-value above ground of a suspended floor. Fill in the cell.",
+            "Ground floors!P5  Vent area [m²/m]: found an empty cell;"
+            " expected the vent area of a suspended floor. Fill in the cell.",
+        ],
+    ),
+    "fields of other types on a slab": (
+        {"Ground floors!N5": 0.4, "Ground floors!Q5": 4, "Ground floors!T5": "Wall", "Ground floors!V5": 0.3},
+        [
+            "Ground floors!N5  Height above ground [m]: found 0.4;"
+            " expected an empty cell for a slab on ground. Clear the cell, or correct the type.",
+            "Ground floors!Q5  Wind speed [m/s]: found 4;"
+            " expected an empty cell for a slab on ground. Clear the cell, or correct the type.",
+            "Ground floors!T5  Basement wall: found 'Wall';"
+            " expected an empty cell for a slab on ground. Clear the cell, or correct the type.",
+            "Ground floors!V5  Basement air change [1/h]: found 0.3;"
+            " expected an empty cell for a slab on ground. Clear the cell, or correct the type.",
+        ],
+    ),
+    "edge insulation and volume of a heated basement": (
+        {
+            **{"Ground floors!C5": "heated basement", "Ground floors!S5": 2, "Ground floors!T5": "Wall"},
+            **{"Ground floors!J5": "vertical", "Ground floors!U5": 100},
+        },
+        [
+            "Ground floors!J5  Edge insulation: found 'vertical';"
+            " expected an empty cell for a heated basement. Clear the cell, or correct the type.",
+            "Ground floors!U5  Basement volume [m³]: found 100;"
+            " expected an empty cell for a heated basement. Clear the cell, or correct the type.",
+        ],
+    ),
+    "edge insulation half filled": (
+        {"Ground floors!J5": "horizontal", "Ground floors!L5": 1.5},
+        [
+            "Ground floors!K5  Edge depth [m]: found an empty cell;"
+            " expected the edge depth of horizontal edge insulation. Fill in the cell.",
+            "Ground floors!M5  Edge thickness [mm]: found an empty cell;"
+            " expected the edge thickness of horizontal edge insulation. Fill in the cell.",
+        ],
+    ),
+    "edge insulation not chosen": (
+        {"Ground floors!K5": 0.6},
+        [
+            "Ground floors!K5  Edge depth [m]: found 0.6;"
+            " expected an empty cell without edge insulation. Clear the cell, or choose the edge insulation.",
+        ],
+    ),
+    "edge insulation worse than the ground": (
+        {"Ground floors!J5": "vertical", "Ground floors!K5": 1, "Ground floors!L5": 0.04, "Ground floors!M5": 100},
+        [
+            "Ground floors!L5  Edge resistance [m²·K/W]: found 0.04 for 100 mm;"
+            " expected more than the 0.05 m²·K/W of as much sand or gravel. Correct the resistance or the thickness.",
+        ],
+    ),
+    "bridge to its own zone": (
+        {"Thermal bridges!G5": "HOUSE"},
+        [
+            "Thermal bridges!G5  Faces: found 'HOUSE', the bridge's own zone;"
+            " expected outdoors or another zone. Choose the zone on the other side, or clear the cell.",
+        ],
+    ),
+    "bridge to an unknown zone": (
+        {"Thermal bridges!G5": "Loff"},
+        [
+            "Thermal bridges!G5  Faces: found 'Loff';"
+            " expected outdoors, or a name from sheet Zones. Did you mean 'Loft'?",
+        ],
+    ),
+    "cluster of unconditioned zones cut off": (
+        {
+            **{"Zones!A7": "Stair", "Zones!B7": "unconditioned", "Zones!E7": 10, "Zones!F7": 25},
+            **{"Envelope!7:7": None, "Envelope!D8": "Stair", "Envelope!H8": None},
+        },
+        [
+            "Zones!A6  Zone: found 'Loft' without any heat path;"
+            " expected an element to outdoors or to a conditioned zone, or a ground floor."
+            " Add the elements of 'Loft' to sheet Envelope.",
+            "Zones!A7  Zone: found 'Stair' without any heat path;"
+            " expected an element to outdoors or to a conditioned zone, or a ground floor."
+            " Add the elements of 'Stair' to sheet Envelope.",
+        ],
+    ),
     # sheets and titles
     "missing sheet": (
         {"Envelope": None},
@@ -630,6 +764,82 @@ FAULTS: dict[str, tuple[Changes, list[str]]] = {
         [
             "Project!C6  Altitude [m]: found the unit 'ft';"
             " expected 'm'. Convert the values to m and restore the unit.",
+        ],
+    ),
+    # obstructions and movable shading
+    "unknown obstruction": (
+        {"Openings!G5": "Streat"},
+        [
+            "Openings!G5  Obstruction: found 'Streat'; expected a name from sheet Obstructions. Did you mean 'Street'?",
+        ],
+    ),
+    "unknown shading device": (
+        {"Openings!H5": "Curtain"},
+        [
+            "Openings!H5  Movable shading: found 'Curtain'; expected a name from sheet Shading devices."
+            " Add 'Curtain' to sheet Shading devices, or choose from the list of the cell.",
+        ],
+    ),
+    "obstruction of an inner element": (
+        {"Envelope!K7": "Street"},
+        [
+            "Envelope!K7  Obstruction: found 'Street' on an element that faces 'Loft';"
+            " expected an empty cell, since no sun falls there. Clear the cell.",
+        ],
+    ),
+    "obstruction and shading of an inner opening": (
+        {"Openings!B6": "Ceiling", "Openings!G6": "Street", "Openings!H6": "Awning"},
+        [
+            "Openings!G6  Obstruction: found 'Street' on an opening in 'Ceiling';"
+            " expected an empty cell, since no sun falls there. Clear the cell.",
+            "Openings!H6  Movable shading: found 'Awning' on an opening in 'Ceiling';"
+            " expected an empty cell, since no sun falls there. Clear the cell.",
+        ],
+    ),
+    "skyline beyond the zenith": (
+        {"Obstructions!B5": 95},
+        [
+            "Obstructions!B5  Horizon S [°]: found 95; expected a number from 0 to 90."
+            " Type a value in ° within these limits.",
+        ],
+    ),
+    "distances without depth": (
+        {"Obstructions!C5": None, "Obstructions!F5": 0.2},
+        [
+            "Obstructions!C5  Overhang depth [m]: found no depth, with a distance of 0.3 m;"
+            " expected the depth of the overhang. Fill in the depth, or clear the distance.",
+            "Obstructions!E5  Left fin depth [m]: found no depth, with a distance of 0.2 m;"
+            " expected the depth of the left fin. Fill in the depth, or clear the distance.",
+        ],
+    ),
+    "shading without factor and device": (
+        {"Shading devices!B5": None},
+        [
+            "Shading devices!B5  Reduction factor [-]: found neither a factor nor a device;"
+            " expected one of the two. Type the factor, or choose a device.",
+        ],
+    ),
+    "shading with factor and device": (
+        {"Shading devices!C5": "white curtain 70 %"},
+        [
+            "Shading devices!C5  Device: found both the factor 0.3 and the device 'white curtain 70 %';"
+            " expected one of the two. Clear one of the two cells.",
+        ],
+    ),
+    "shading controlled by months without months": (
+        {"Shading devices!E5": "months"},
+        [
+            "Shading devices!G5  Months: found an empty cell;"
+            " expected the months of a device controlled by months."
+            " Type the first and the last month, such as 5-9.",
+        ],
+    ),
+    "shading used in no mode": (
+        {"Shading devices!I5": "no"},
+        [
+            "Shading devices!I5  Used in cooling: found no in heating and in cooling;"
+            " expected yes in heating, in cooling or in both."
+            " Choose yes in one of the two columns, or delete the device.",
         ],
     ),
     # several at once, in the order of the workbook

@@ -2,25 +2,29 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 from numpy.typing import NDArray
 
 from heatledger.balance.air import AirExchange, air_exchange, air_heat_capacity
+from heatledger.balance.build_ups import build_up_comparison, build_up_results
 from heatledger.balance.capacity import heat_capacities
 from heatledger.balance.constructions import Constructions, construct
 from heatledger.balance.gains import Gains, monthly_gains
+from heatledger.balance.ground import GroundCoupling, ground_couplings
 from heatledger.balance.needs import ModeBalance, mode_balance
 from heatledger.balance.network import adjustment_factors, zone_temperatures
 from heatledger.balance.notes import notes_of
 from heatledger.balance.paths import HeatPath, heat_paths
-from heatledger.balance.reporting import build_up_results, climate_result, element_losses, project_result
+from heatledger.balance.reporting import climate_result, element_losses, ground_floor_results, project_result
+from heatledger.balance.use import ZoneUse, reduced, set_points, zone_use
 from heatledger.building.model import Building, Zone
 from heatledger.climate.model import Climate
 from heatledger.errors import InputError, Problem
 from heatledger.results import BuildingResult, Months, Results, ZoneResult
 from heatledger.standards.iso13790 import numerical_parameter, time_constant
+from heatledger.standards.iso13790_use import limit_ratio, season_fraction
 
 __all__ = ["calculate"]
 
@@ -57,8 +61,10 @@ def calculate(building: Building, climate: Climate) -> Results:
         _building_result(zones),
         element_losses(building, model.paths, model.air, heating, model.outdoor),
         model.gains.openings,
-        build_up_results(model.constructions, model.outdoor),
-        notes_of(building, climate, model.air, model.constructions, cooling),
+        build_up_results(model.constructions, building.project, model.outdoor),
+        notes_of(building, climate, model.air, model.constructions, cooling, model.gains.openings),
+        build_up_comparison(model.constructions, building.project, model.outdoor),
+        ground_floor_results(building, model.ground, heating, cooling),
     )
 
 
@@ -70,6 +76,7 @@ class _HeatModel:
     outdoor: Months
     """[°C]"""
     constructions: Constructions
+    ground: dict[str, GroundCoupling]
     paths: tuple[HeatPath, ...]
     air: tuple[AirExchange, ...]
     gains: Gains
@@ -88,18 +95,31 @@ class _HeatModel:
         """Transmission and air of each zone, mean of the year. [W/K]"""
         return np.asarray(self.transmission + self.air_coefficients(mode).mean(axis=1))
 
+    def time_constants(self, mode: str) -> NDArray[np.float64]:
+        """Of each zone; 0 for one without heat loss. [h]"""
+        total = self.total_coefficients(mode)
+        return time_constant(self.capacities, np.where(total > 0, total, np.inf))
+
+    def uses(self) -> tuple[ZoneUse, ...]:
+        """How each zone is used."""
+        constants = zip(self.time_constants("heating"), self.time_constants("cooling"), strict=True)
+        return tuple(zone_use(zone, *pair) for zone, pair in zip(self.building.zones, constants, strict=True))
+
 
 def _heat_model(building: Building, climate: Climate, air_capacity: float) -> _HeatModel:
     outdoor = climate.temperature
-    constructions = construct(building, outdoor, climate.latitude)
-    paths = heat_paths(building, constructions, outdoor)
-    air = tuple(air_exchange(zone, building.project, air_capacity) for zone in building.zones)
+    constructions = construct(building)
+    ground = ground_couplings(building, constructions, outdoor, climate.latitude)
+    paths = heat_paths(building, constructions, ground, outdoor)
+    air = tuple(air_exchange(zone, building.project, air_capacity, outdoor) for zone in building.zones)
     conditioned = np.array([zone.conditioned for zone in building.zones])
-    factors = adjustment_factors(paths, np.where(conditioned, 1.0, np.nan), _monthly(air, "heating"))
+    _require_heat_paths(building, paths, _monthly(air, "heating"))
+    factors = adjustment_factors(paths, conditioned, _monthly(air, "heating"))
     return _HeatModel(
         building,
         outdoor,
         constructions,
+        ground,
         paths,
         air,
         monthly_gains(building, constructions, climate),
@@ -110,8 +130,7 @@ def _heat_model(building: Building, climate: Climate, air_capacity: float) -> _H
 
 
 def _monthly(air: tuple[AirExchange, ...], mode: str) -> NDArray[np.float64]:
-    values = np.array([exchange.heating if mode == "heating" else exchange.cooling for exchange in air])
-    return np.repeat(values[:, None], 12, axis=1)
+    return np.array([exchange.heating if mode == "heating" else exchange.cooling for exchange in air])
 
 
 def _transmission(paths: tuple[HeatPath, ...], factors: NDArray[np.float64]) -> NDArray[np.float64]:
@@ -123,43 +142,56 @@ def _transmission(paths: tuple[HeatPath, ...], factors: NDArray[np.float64]) -> 
 
 
 def _balance(model: _HeatModel, mode: str) -> ModeBalance:
-    """Temperatures, then balance, of all zones in one mode."""
-    zones = model.building.zones
-    coefficients = model.air_coefficients(mode)
-    set_points = np.array([_set_point(zone, mode) for zone in zones])
-    temperatures = zone_temperatures(model.paths, set_points, coefficients, model.outdoor, model.gains.power)
-    total = model.total_coefficients(mode)
-    exponents = numerical_parameter(time_constant(model.capacities, np.where(total > 0, total, np.inf)))[:, None]
-    cut_offs = model.building.project.method.startswith("EN ISO 52016-1")
-    return mode_balance(
+    """Temperatures, then balance, then intermittency of all zones in one mode."""
+    zones, uses = model.building.zones, model.uses()
+    coefficients, constants = model.air_coefficients(mode), model.time_constants(mode)
+    temperatures = zone_temperatures(
+        model.paths, set_points(zones, uses, mode), coefficients, model.outdoor, model.gains.power(mode)
+    )
+    continuous = mode_balance(
         mode,
         model.paths,
         temperatures,
         coefficients,
         model.outdoor,
-        model.gains.total,
-        exponents,
-        cut_offs=cut_offs,
+        model.gains.total(mode),
+        numerical_parameter(constants)[:, None],
+        cut_offs=model.building.project.method.startswith("EN ISO 52016-1"),
     )
+    needs = [
+        reduced(need, ratio, zone, use, mode, float(constant))
+        for need, ratio, zone, use, constant in zip(
+            continuous.need, continuous.ratio, zones, uses, constants, strict=True
+        )
+    ]
+    return replace(continuous, need=np.array(needs))
 
 
-def _set_point(zone: Zone, mode: str) -> float:
-    """NaN for an unconditioned zone. [°C]"""
-    if not zone.conditioned:
-        return float("nan")
-    return zone.heating_set_point if mode == "heating" else zone.cooling_set_point
+def _require_heat_paths(building: Building, paths: tuple[HeatPath, ...], air: NDArray[np.float64]) -> None:
+    """Without them an unconditioned zone has no temperature, as where negative thermal bridges outweigh the rest."""
+    conductances = air.min(axis=1)
+    for path in paths:
+        conductances[path.zone] += path.coefficient
+    pairs = zip(building.zones, conductances, strict=True)
+    problems = [_no_loss(zone) for zone, conductance in pairs if not zone.conditioned and conductance <= 0]
+    if problems:
+        raise InputError(problems)
+
+
+def _no_loss(zone: Zone) -> Problem:
+    return Problem(
+        f"no heat loss from '{zone.name}'",
+        "a positive sum of transmission and ventilation",
+        "Check its elements, thermal bridges, leakage and air system.",
+        sheet=zone.origin.sheet,
+        cell=zone.origin.cell(),
+        column="Zone",
+    )
 
 
 def _require_losses(model: _HeatModel) -> None:
     problems = [
-        Problem(
-            f"no heat loss from '{zone.name}'",
-            "a positive sum of transmission and ventilation",
-            "Check its elements, thermal bridges, leakage and air system.",
-            sheet=zone.origin.sheet,
-            cell=zone.origin.cell(),
-            column="Zone",
-        )
+        _no_loss(zone)
         for zone, *coefficients in zip(
             model.building.zones, model.total_coefficients("heating"), model.total_coefficients("cooling"), strict=True
         )
@@ -171,8 +203,9 @@ def _require_losses(model: _HeatModel) -> None:
 
 def _zone_result(number: int, model: _HeatModel, heating: ModeBalance, cooling: ModeBalance) -> ZoneResult:
     zone = model.building.zones[number]
-    total = model.total_coefficients("heating")[number]
-    constant = float(time_constant(model.capacities[number], total)) if total > 0 else 0.0
+    constant = float(model.time_constants("heating")[number])
+    exponents = [float(numerical_parameter(model.time_constants(mode)[number])) for mode in ("heating", "cooling")]
+    use = model.uses()[number]
     nothing = np.zeros(12)
     return ZoneResult(
         name=zone.name,
@@ -185,12 +218,18 @@ def _zone_result(number: int, model: _HeatModel, heating: ModeBalance, cooling: 
         transmission_cooling=cooling.transmission[number],
         ventilation_cooling=cooling.ventilation[number],
         solar_gains=model.gains.solar[number],
+        solar_gains_cooling=model.gains.solar_cooling[number],
         internal_gains=model.gains.internal[number],
         gain_ratio=heating.ratio[number],
         gain_utilisation=heating.utilisation[number],
         loss_ratio=cooling.ratio[number],
         loss_utilisation=cooling.utilisation[number],
-        exponent=float(numerical_parameter(constant)),
+        heating_season=_season(np.maximum(heating.ratio[number], 0), exponents[0]) if zone.conditioned else nothing,
+        cooling_season=_season(_losses_to_gains(model, cooling, number), exponents[1]) if zone.cooled else nothing,
+        fan_electricity=model.air[number].fan_electricity,
+        heating_use=use.heating,
+        cooling_use=use.cooling,
+        exponent=exponents[0],
         time_constant=constant,
         heat_capacity=float(model.capacities[number]) / 1000,
         transmission_coefficient=float(model.transmission[number]),
@@ -208,3 +247,14 @@ def _building_result(zones: tuple[ZoneResult, ...]) -> BuildingResult:
         np.sum([zone.heating_need for zone in zones], axis=0),
         np.sum([zone.cooling_need for zone in zones], axis=0),
     )
+
+
+def _losses_to_gains(model: _HeatModel, cooling: ModeBalance, number: int) -> Months:
+    """1/γ_C of a zone: 0 where heat comes in from outdoors, NaN without gains. [-]"""
+    losses = np.maximum(cooling.transmission[number] + cooling.ventilation[number], 0)
+    gains = model.gains.total("cooling")[number]
+    return np.asarray(np.divide(losses, gains, out=np.full(12, np.nan), where=gains > 0))
+
+
+def _season(ratio: Months, exponent: float) -> Months:
+    return season_fraction(ratio, float(limit_ratio(exponent)))

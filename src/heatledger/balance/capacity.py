@@ -7,10 +7,11 @@ from numpy.typing import NDArray
 
 from heatledger.balance.constructions import Construction, Constructions
 from heatledger.building.model import Building, Zone
-from heatledger.standards.iso13786 import areal_capacity, dynamic_properties
+from heatledger.errors import InputError, Problem
+from heatledger.standards.iso13786 import DynamicProperties, dynamic_properties, effective_capacity
 from heatledger.standards.iso13790 import CAPACITY_CLASSES
 
-__all__ = ["face_capacities", "heat_capacities"]
+__all__ = ["effective_thickness_capacity", "face_capacities", "heat_capacities", "swing_of"]
 
 AIR_AND_FURNITURE = 10_000.0
 """Per floor area, added to the capacity of the build-ups. [J/(m²·K)] EN ISO 52016-1:2017, annex B."""
@@ -55,15 +56,40 @@ def face_capacities(construction: Construction) -> tuple[float, float]:
     which the numerical parameters of the monthly method were found. With the film a bare concrete face counts for
     little more than half, and the heavy case 900 of ANSI/ASHRAE 140 leaves the band of its published cooling need.
     """
-    layers = construction.build_up.layers[: len(construction.resistances)]
-    capacities = [
-        float(areal_capacity(layer.thickness, layer.density, layer.specific_heat)) if layer.density else 0.0
-        for layer in layers
-    ]
     inside, outside = construction.surfaces
-    inner = dynamic_properties(construction.resistances, capacities, 0.0, outside).inside_capacity
-    outer = dynamic_properties(construction.resistances, capacities, inside, 0.0).outside_capacity
+    inner = swing_of(construction, 0.0, outside).inside_capacity
+    outer = swing_of(construction, inside, 0.0).outside_capacity
     return inner, outer
+
+
+def swing_of(construction: Construction, inside: float, outside: float) -> DynamicProperties:
+    """Response to a daily swing between two surface resistances. [m²·K/W]
+
+    Raises
+    ------
+    InputError
+        If the layers are so thick and heavy that the method finds nothing to pass.
+    """
+    capacities = [part.capacity for part in construction.slices]
+    try:
+        return dynamic_properties(construction.slice_resistances, capacities, inside, outside)
+    except ValueError as error:
+        name, origin = construction.build_up.name, construction.build_up.layers[0].origin
+        expected = "layers through which some heat passes within a day"
+        fix = "Correct thicknesses, and densities and specific heats on sheet Materials."
+        place = {"sheet": origin.sheet, "cell": origin.cell("thickness"), "column": "Thickness [mm]"}
+        raise InputError([Problem(f"too much mass in '{name}'", expected, fix, **place)]) from error
+
+
+def effective_thickness_capacity(construction: Construction) -> float:
+    """Capacity of the inside by effective thickness, a check beside :func:`face_capacities`. [J/(m²·K)]"""
+    parts = [
+        (part.thickness, part.thickness / resistance, part.capacity / part.thickness)
+        for part, resistance in zip(construction.slices, construction.slice_resistances, strict=True)
+        if part.thickness and resistance
+    ]
+    thicknesses, conductivities, volumetric = zip(*parts, strict=True) if parts else ((), (), ())
+    return effective_capacity(thicknesses, conductivities, volumetric, [1.0] * len(parts))
 
 
 def _capacity(zone: Zone, faces: float) -> float:
@@ -92,4 +118,7 @@ def _capacity_of_faces(building: Building, constructions: Constructions) -> NDAr
         if found is not None:
             inner, _ = by_position[found.position]
             capacities[index[floor.zone]] += inner * floor.area
+        if floor.wall_area:
+            inner, _ = by_position[constructions.of_basement_wall[floor.name].position]
+            capacities[index[floor.zone]] += inner * floor.wall_area
     return capacities

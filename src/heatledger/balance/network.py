@@ -26,8 +26,8 @@ def zone_temperatures(
     ----------
     paths : sequence of HeatPath
         Transmission paths of all zones.
-    set_points : ndarray, shape (zones,)
-        Set-point of each conditioned zone; NaN marks an unconditioned one. [°C]
+    set_points : ndarray, shape (zones, 12)
+        Set-points of the conditioned zones; NaN marks an unconditioned one. [°C]
     air_coefficients : ndarray, shape (zones, 12)
         Heat carried by outdoor air per kelvin. [W/K]
     outdoor : ndarray, shape (12,)
@@ -44,8 +44,8 @@ def zone_temperatures(
     ----------
     EN ISO 13789:2017, 7 and annex; ISO 13790:2008, annex A: Σ H·(θ_x − θ_u) + Φ_gn = 0 for each zone u.
     """
-    temperatures = np.repeat(set_points[:, None], 12, axis=1)
-    free = np.flatnonzero(np.isnan(set_points))
+    temperatures = set_points.copy()
+    free = np.flatnonzero(np.isnan(set_points).all(axis=1))
     if not free.size:
         return temperatures
     position = {int(zone): place for place, zone in enumerate(free)}
@@ -70,14 +70,16 @@ def zone_temperatures(
 
 
 def adjustment_factors(
-    paths: Sequence[HeatPath], set_points: NDArray[np.float64], air_coefficients: NDArray[np.float64]
+    paths: Sequence[HeatPath], conditioned: NDArray[np.bool_], air_coefficients: NDArray[np.float64]
 ) -> NDArray[np.float64]:
     """Factor b of every unconditioned zone: its share of the temperature drop to outdoors, without gains.
 
     Parameters
     ----------
-    paths, set_points, air_coefficients
+    paths, air_coefficients
         As in :func:`zone_temperatures`.
+    conditioned : ndarray of bool, shape (zones,)
+        Which zones have a set-point.
 
     Returns
     -------
@@ -88,7 +90,7 @@ def adjustment_factors(
     ----------
     EN ISO 13789:2017, 7.4: b = H_ue/(H_iu + H_ue) for a single space.
     """
-    unit = np.where(np.isnan(set_points), np.nan, 1.0)
+    unit = np.repeat(np.where(conditioned, 1.0, np.nan)[:, None], 12, axis=1)
     cold = [replace(path, temperature=np.zeros(12)) if path.other is None else path for path in paths]
     steady = np.repeat(air_coefficients.mean(axis=1)[:, None], 12, axis=1)
     warmth = zone_temperatures(cold, unit, steady, np.zeros(12), np.zeros_like(steady))

@@ -7,11 +7,14 @@ from collections.abc import Iterator, Sequence
 
 from heatledger.balance.air import AirExchange, required_air
 from heatledger.balance.constructions import Constructions
+from heatledger.balance.envelope_notes import envelope_checks, envelope_methods, material_sources
+from heatledger.balance.ground_notes import ground_checks
 from heatledger.balance.needs import ModeBalance
+from heatledger.balance.shading_notes import shading_checks, shading_methods
 from heatledger.building.defaults import DefaultUsed
 from heatledger.building.model import Building, Zone
 from heatledger.climate.model import Climate
-from heatledger.results import Note
+from heatledger.results import Note, OpeningGains
 
 __all__ = ["notes_of"]
 
@@ -34,6 +37,11 @@ OVERHEATING = 10.0
 """Heat per floor area and year that a zone without cooling may hold before it is pointed out. [kWh/m²] Common
 practice, no source."""
 
+NIGHT_COOLING = (
+    "Night cooling: its air change for 8 hours a night at the mean outdoor temperature of the month, never beyond the "
+    "need. Nights are cooler, but a building stores only so much cold: check with an hourly method."
+)
+
 
 def notes_of(
     building: Building,
@@ -41,12 +49,13 @@ def notes_of(
     air: Sequence[AirExchange],
     constructions: Constructions,
     cooling: ModeBalance,
+    openings: Sequence[OpeningGains] = (),
 ) -> tuple[Note, ...]:
     """All notes, checks first.
 
     Parameters
     ----------
-    building, climate, air, constructions, cooling
+    building, climate, air, constructions, cooling, openings
         What was calculated, and from what.
 
     Returns
@@ -57,13 +66,16 @@ def notes_of(
         *_geometry(building),
         *_leakage(building),
         *_u_values(building, constructions),
+        *envelope_checks(building, constructions),
+        *ground_checks(building),
+        *shading_checks(building),
         *_bridges(building),
         *_fresh_air(building, air),
         *_storage(building),
         *_overheating(building, cooling),
         *(Note("check", note, "Project", building.project.origin.cell("weather")) for note in climate.notes),
     ]
-    return (*checks, *_defaults(building.defaults), *_methods(building), *_sources(building, climate))
+    return (*checks, *_defaults(building.defaults), *_methods(building, openings), *_sources(building, climate))
 
 
 def _zone_check(zone: Zone, field: str, text: str) -> Note:
@@ -106,11 +118,14 @@ def _u_values(building: Building, constructions: Constructions) -> Iterator[Note
             field = "u_value" if element.build_up is None else "build_up"
             text = f"{element.name}: the U-value is {value:.3g} W/(m²·K); usual for a {element.kind} is {usual}."
             yield Note("check", text, element.origin.sheet, element.origin.cell(field))
-    units = {opening.glazed_unit.name: opening.glazed_unit for e in building.elements for opening in e.openings}
-    for unit in units.values():
-        if _outside(unit.u_value, U_VALUES["glazed unit"]):
+    told: set[str] = set()
+    for opening in (opening for element in building.elements for opening in element.openings):
+        unit, value = opening.glazed_unit, constructions.openings[opening.name].u_value
+        if unit.name not in told and _outside(value, U_VALUES["glazed unit"]):
+            told.add(unit.name)
             usual = "{:g} to {:g} W/(m²·K)".format(*U_VALUES["glazed unit"])
-            text = f"{unit.name}: the U-value is {unit.u_value:.3g} W/(m²·K); usual for a glazed unit is {usual}."
+            where = "" if unit.u_value is not None else f" in {opening.name}"
+            text = f"{unit.name}: the U-value is {value:.3g} W/(m²·K){where}; usual for a glazed unit is {usual}."
             yield Note("check", text, unit.origin.sheet, unit.origin.cell("u_value"))
 
 
@@ -136,7 +151,7 @@ def _fresh_air(building: Building, air: Sequence[AirExchange]) -> Iterator[Note]
             text = "no air system; leakage alone is no planned fresh air. Local codes on hygiene decide."
             yield _zone_check(zone, "air_system", text)
             continue
-        needed, flow = required_air(zone), exchange.leakage + exchange.supplied
+        needed, flow = required_air(zone), float((exchange.leakage + exchange.supplied).max())
         if flow < needed * (1 - 1e-9) * zone.air_system.running_share:
             text = (
                 f"outdoor air of {flow:.0f} m³/h on average is less than the {needed:.0f} m³/h of its usage; "
@@ -151,7 +166,9 @@ def _storage(building: Building) -> Iterator[Note]:
         if zone.heat_capacity is not None or zone.thermal_mass != "from build-ups" or not zone.conditioned:
             continue
         faces = [(e.net_area, e.build_up) for e in building.elements if zone.name in {e.zone, e.faces}]
-        faces += [(floor.area, floor.build_up) for floor in building.ground_floors if floor.zone == zone.name]
+        floors = [floor for floor in building.ground_floors if floor.zone == zone.name]
+        faces += [(floor.area, floor.build_up) for floor in floors]
+        faces += [(floor.wall_area, floor.basement_wall) for floor in floors]
         total = sum(area for area, _ in faces)
         unknown = sum(area for area, build_up in faces if build_up is None)
         if total and unknown > total / 2:
@@ -186,21 +203,22 @@ def _defaults(defaults: Sequence[DefaultUsed]) -> Iterator[Note]:
         yield Note("default", f"{column}{whose}: empty, taken as {value}{because}.", sheet, cells[0].cell)
 
 
-def _methods(building: Building) -> Iterator[Note]:
+def _methods(building: Building, openings: Sequence[OpeningGains]) -> Iterator[Note]:
     method = building.project.method
     lines = [
         f"Monthly balance with utilisation factors: {method}, a = 1 + τ/15 h.",
-        "U-values of layers and air layers: ISO 6946:2017.",
-        "Openings: ISO 10077-1, whole units as declared; sun through glass 0.9·g (ISO 13790:2008, 11.4.2).",
-        "Floors on the ground: ISO 13370:2017, monthly, at constant inside temperature.",
+        *envelope_methods(),
+        "Slabs, suspended floors and basements: ISO 13370:2017, monthly, each mode at its constant inside temperature.",
         "Thermal bridges: ψ·l and χ as entered (ISO 14683, ISO 10211).",
         "Outdoor air: leakage from n50 (ISO 13789:1999, annex), fans and windows as entered.",
         "Sun: hourly irradiance on each plane with the Perez sky (ISO 52010-1), summed by month.",
+        *shading_methods(building, openings),
         "Radiation to the sky: 11 K below outdoor air (ISO 13790:2008, 11.4.6).",
-        "Heat capacity from layers: ISO 13786:2017, 24 h, plus 10 kJ/(m²·K) of floor for air and furniture.",
         "Unconditioned zones: steady heat balance of all of them together, month by month (ISO 13789:2017).",
         "Air flows between zones are not modelled.",
-        "Set-points count day and night; setback and holidays are not modelled.",
+        *([NIGHT_COOLING] if any(zone.air_system and zone.air_system.night_cooling for zone in building.zones) else []),
+        "Hours and days without use: ISO 13790:2008, 13.2: normal or mean set-point, or reduced need.",
+        "Length of the season: ISO 13790:2008, 7.4.",
     ]
     yield from (Note("method", line, "", "") for line in lines)
 
@@ -208,3 +226,4 @@ def _methods(building: Building) -> Iterator[Note]:
 def _sources(building: Building, climate: Climate) -> Iterator[Note]:
     cell = building.project.origin.cell("weather")
     yield Note("source", f"Weather: {climate.name}. {climate.source}", "Project", cell)
+    yield from material_sources(building)

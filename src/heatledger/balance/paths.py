@@ -2,14 +2,16 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
+from functools import partial
 from typing import TYPE_CHECKING
 
 import numpy as np
 
 from heatledger.balance.constructions import Constructions
-from heatledger.building.model import Building, Element
+from heatledger.balance.ground import GroundCoupling
+from heatledger.building.model import Building, Element, GroundFloor, ThermalBridge
 
 if TYPE_CHECKING:
     from heatledger.results import Months
@@ -38,7 +40,9 @@ class HeatPath:
     """Monthly temperature behind, where it is known beforehand. [°C]"""
 
 
-def heat_paths(building: Building, constructions: Constructions, outdoor: Months) -> tuple[HeatPath, ...]:
+def heat_paths(
+    building: Building, constructions: Constructions, ground: Mapping[str, GroundCoupling], outdoor: Months
+) -> tuple[HeatPath, ...]:
     """All transmission paths of all zones.
 
     Parameters
@@ -46,42 +50,49 @@ def heat_paths(building: Building, constructions: Constructions, outdoor: Months
     building : Building
         The building.
     constructions : Constructions
-        U-values and ground couplings.
+        U-values.
+    ground : mapping of str to GroundCoupling
+        By ground floor name.
     outdoor : ndarray, shape (12,)
         Monthly outdoor temperature. [°C]
 
     Returns
     -------
     tuple of HeatPath
-        A partition between two zones stands twice, once seen from either side.
+        A partition or thermal bridge between two zones stands twice, once seen from either side.
     """
     index = {zone.name: number for number, zone in enumerate(building.zones)}
     paths: list[HeatPath] = []
     for element in building.elements:
         paths += _element_paths(element, constructions, index, outdoor)
-    for floor in building.ground_floors:
-        ground = constructions.ground[floor.name]
-        temperature = ground.temperature
-        zone = index[floor.zone]
-        paths.append(
-            HeatPath(
-                zone,
-                floor.name,
-                "ground floor",
-                "ground",
-                floor.area,
-                ground.u_value,
-                ground.coefficient,
-                None,
-                temperature,
-            )
-        )
+    paths += [_ground_path(floor, index[floor.zone], ground[floor.name]) for floor in building.ground_floors]
     for bridge in building.thermal_bridges:
-        zone = index[bridge.zone]
-        paths.append(
-            HeatPath(zone, bridge.name, "thermal bridge", "outdoors", None, None, bridge.coefficient, None, outdoor)
-        )
+        paths += _bridge_paths(bridge, index, outdoor)
     return tuple(paths)
+
+
+def _ground_path(floor: GroundFloor, zone: int, coupling: GroundCoupling) -> HeatPath:
+    return HeatPath(
+        zone,
+        floor.name,
+        "ground floor",
+        "ground",
+        coupling.area,
+        coupling.u_value,
+        coupling.coefficient,
+        None,
+        coupling.temperature,
+    )
+
+
+def _bridge_paths(bridge: ThermalBridge, index: dict[str, int], outdoor: Months) -> Iterator[HeatPath]:
+    """The bridge; from both sides if a zone is behind."""
+    here, there = index[bridge.zone], index.get(bridge.faces)
+    temperature = outdoor if there is None else None
+    seen = partial(HeatPath, name=bridge.name, kind="thermal bridge", area=None, u_value=None)
+    yield seen(zone=here, faces=bridge.faces, coefficient=bridge.coefficient, other=there, temperature=temperature)
+    if there is not None:
+        yield seen(zone=there, faces=bridge.zone, coefficient=bridge.coefficient, other=here)
 
 
 def _element_paths(
@@ -92,7 +103,10 @@ def _element_paths(
         return
     u_value = constructions.u_values[element.name]
     parts = [(element.name, element.kind, element.net_area, u_value)]
-    parts += [(opening.name, "opening", opening.area, opening.glazed_unit.u_value) for opening in element.openings]
+    parts += [
+        (opening.name, "opening", opening.area, constructions.openings[opening.name].u_value)
+        for opening in element.openings
+    ]
     here = index[element.zone]
     for name, kind, area, u in parts:
         if element.faces_outdoors:

@@ -2,22 +2,21 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Sequence
+from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import replace
 
 import numpy as np
 
 from heatledger.balance.air import AirExchange
-from heatledger.balance.capacity import face_capacities
-from heatledger.balance.constructions import Construction, Constructions
+from heatledger.balance.ground import GroundCoupling
 from heatledger.balance.months import HOURS
 from heatledger.balance.needs import ModeBalance
 from heatledger.balance.paths import HeatPath, transfer
 from heatledger.building.model import Building
 from heatledger.climate.model import Climate
-from heatledger.results import BuildUpResult, ClimateResult, ElementLoss, LayerResult, Months, ProjectResult
-from heatledger.standards.iso13788 import steady_profile
+from heatledger.results import ClimateResult, ElementLoss, GroundFloorResult, Months, ProjectResult
 
-__all__ = ["build_up_results", "climate_result", "element_losses", "project_result"]
+__all__ = ["climate_result", "element_losses", "ground_floor_results", "project_result"]
 
 
 def project_result(building: Building, altitude: float, air_heat_capacity: float) -> ProjectResult:
@@ -69,77 +68,68 @@ def element_losses(
     Returns
     -------
     tuple of ElementLoss
-        The largest loss first; shares are of the sum of all losses that are positive.
+        The largest loss first, paths between two conditioned zones last; shares are of what leaves the conditioned
+        zones and add up to 100.
     """
     rows = [*_through_elements(building, paths, heating), *_by_air(building, air, heating, outdoor)]
-    total = sum(max(loss, 0.0) for *_, loss in rows)
-    ranked = sorted(rows, key=lambda row: (-row[-1], row[1], row[0]))
-    return tuple(ElementLoss(*row, share=100 * row[-1] / total if total else 0.0) for row in ranked)
+    total = sum(row.loss for row in rows if not row.between_zones)
+    ranked = sorted(rows, key=lambda row: (row.between_zones, -row.loss, row.zone, row.name))
+    counts = total if total > 0 else float("inf")
+    return tuple(replace(row, share=0.0 if row.between_zones else 100 * row.loss / counts) for row in ranked)
 
 
-_Row = tuple[str, str, str, str, float | None, float | None, float, float]
-
-
-def _through_elements(building: Building, paths: Sequence[HeatPath], heating: ModeBalance) -> Iterator[_Row]:
+def _through_elements(building: Building, paths: Sequence[HeatPath], heating: ModeBalance) -> Iterator[ElementLoss]:
     for path in paths:
         zone = building.zones[path.zone]
         if zone.conditioned:
             season = heating.need[path.zone] > 0
             loss = float(np.sum(transfer(path, heating.temperature, HOURS), where=season))
-            yield path.name, zone.name, path.kind, path.faces, path.area, path.u_value, path.coefficient, loss
+            between = path.other is not None and building.zones[path.other].conditioned
+            size = path.area, path.u_value, path.coefficient
+            yield ElementLoss(path.name, zone.name, path.kind, path.faces, *size, loss, 0.0, between)
 
 
-def _by_air(building: Building, air: Sequence[AirExchange], heating: ModeBalance, outdoor: Months) -> Iterator[_Row]:
+def _by_air(
+    building: Building, air: Sequence[AirExchange], heating: ModeBalance, outdoor: Months
+) -> Iterator[ElementLoss]:
     for number, (zone, exchange) in enumerate(zip(building.zones, air, strict=True)):
         season = heating.need[number] > 0
-        degree_hours = np.sum((heating.temperature[number] - outdoor) * HOURS, where=season)
+        degree_hours = (heating.temperature[number] - outdoor) * HOURS
         parts = (
             ("Air leakage", "air leakage", exchange.leakage_coefficient),
             (zone.air_system.name if zone.air_system else "", "ventilation", exchange.supplied_heating),
         )
         for name, kind, coefficient in parts:
-            if zone.conditioned and coefficient:
-                loss = float(coefficient * degree_hours / 1000)
-                yield name, zone.name, kind, "outdoors", None, None, coefficient, loss
+            if zone.conditioned and coefficient.any():
+                loss = float(np.sum(coefficient * degree_hours / 1000, where=season))
+                mean = float(coefficient.mean())
+                yield ElementLoss(name, zone.name, kind, "outdoors", None, None, mean, loss, 0.0)
 
 
-INSIDE_TEMPERATURE = 20.0
-"""Inside air of the temperature profiles. [°C]"""
-
-
-def build_up_results(constructions: Constructions, outdoor: Months) -> tuple[BuildUpResult, ...]:
-    """Every build-up in every position: layers, U, temperatures in the coldest month, heat capacity.
-
-    Parameters
-    ----------
-    constructions : Constructions
-        Build-ups in their positions.
-    outdoor : ndarray, shape (12,)
-        The coldest of these months stands outside. [°C]
-
-    Returns
-    -------
-    tuple of BuildUpResult
-    """
-    coldest = float(np.min(outdoor))
-    return tuple(_build_up_result(found, coldest) for found in constructions.used)
-
-
-def _build_up_result(found: Construction, coldest: float) -> BuildUpResult:
-    layers = found.build_up.layers
-    beyond = (0.0,) * (len(layers) - len(found.resistances))
-    profile = steady_profile(found.resistances, *found.surfaces, INSIDE_TEMPERATURE, coldest)
-    behind = {"outdoors": "outdoors", "zone": "to another zone"}[found.facing]
-    return BuildUpResult(
-        found.build_up.name,
-        f"{found.direction}, {behind}",
-        tuple(
-            LayerResult(layer.material, layer.thickness * 1000, layer.conductivity or None, resistance)
-            for layer, resistance in zip(layers, (*found.resistances, *beyond), strict=True)
-        ),
-        sum(layer.thickness for layer in layers) * 1000,
-        found.total,
-        found.u_value,
-        face_capacities(found)[0] / 1000,
-        tuple(float(temperature) for temperature in profile.temperatures),
-    )
+def ground_floor_results(
+    building: Building, ground: Mapping[str, GroundCoupling], heating: ModeBalance, cooling: ModeBalance
+) -> tuple[GroundFloorResult, ...]:
+    """Every ground floor with its coefficients and its heat flow at the temperatures of its zone in both modes."""
+    index = {zone.name: number for number, zone in enumerate(building.zones)}
+    results: list[GroundFloorResult] = []
+    for floor in building.ground_floors:
+        found, zone = ground[floor.name], index[floor.zone]
+        results.append(
+            GroundFloorResult(
+                floor.name,
+                floor.zone,
+                floor.type,
+                found.area,
+                found.dimension,
+                found.thickness,
+                found.u_value,
+                found.coefficient,
+                float(found.periodic.inside),
+                float(found.periodic.outside),
+                found.phases[1],
+                found.temperature,
+                found.heat_flow(heating.temperature[zone]),
+                found.heat_flow(cooling.temperature[zone]),
+            )
+        )
+    return tuple(results)

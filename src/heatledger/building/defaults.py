@@ -5,7 +5,9 @@ from __future__ import annotations
 from collections.abc import Callable, Iterator
 from dataclasses import dataclass
 
+from heatledger.inputs import buildups, glazedunits, shading
 from heatledger.inputs.columns import SheetRow, plain
+from heatledger.inputs.groundfloors import uses
 from heatledger.inputs.rows import (
     OUTDOORS,
     SHEETS,
@@ -13,9 +15,12 @@ from heatledger.inputs.rows import (
     BuildUpRow,
     ElementRow,
     GlazedUnitRow,
+    GroundFloorRow,
     MaterialRow,
+    ObstructionRow,
     OpeningRow,
     Rows,
+    ShadingDeviceRow,
     UsageRow,
     ZoneRow,
 )
@@ -65,7 +70,7 @@ def _of_row(row: SheetRow) -> Iterator[DefaultUsed]:
         if column.default is None or field in row.model_fields_set or not _counts(row, field):
             continue
         value = plain(column.default) if isinstance(column.default, float) else str(column.default)
-        name = str(getattr(row, row.key())) if row.unique else ""
+        name = "" if row.labelled else str(getattr(row, row.key()))
         yield DefaultUsed(row.sheet, row.cell(field), name, column.label, value, column.default_note)
 
 
@@ -78,8 +83,11 @@ def _names_in_use(rows: Rows) -> dict[type[SheetRow], set[str]]:
     return {
         UsageRow: named(zone.usage for zone in rows.zones),
         AirSystemRow: named(zone.air_system for zone in rows.zones),
-        MaterialRow: named(layer.material for layer in rows.build_ups),
+        MaterialRow: named(name for layer in rows.build_ups for name in (layer.material, layer.second_material)),
         GlazedUnitRow: named(opening.glazed_unit for opening in rows.openings),
+        ObstructionRow: named(element.obstruction for element in rows.elements)
+        | named(opening.obstruction for opening in rows.openings),
+        ShadingDeviceRow: named(opening.shading for opening in rows.openings),
     }
 
 
@@ -88,13 +96,21 @@ def _counts(row: SheetRow, field: str) -> bool:
     match row:
         case ElementRow() if field == "absorptance":
             return folded(row.faces) == OUTDOORS
+        case GroundFloorRow():
+            return uses(row, field)
         case ZoneRow() if field == "thermal_mass":
             return row.heat_capacity is None
         case AirSystemRow():
             return field not in _AIR_SYSTEM_FIELDS or _AIR_SYSTEM_FIELDS[field](row)
         case UsageRow():
             return field in _USAGE_FIELDS and _USAGE_FIELDS[field](row)
-        case OpeningRow() | BuildUpRow():
+        case BuildUpRow():
+            return buildups.uses(row, field)
+        case GlazedUnitRow():
+            return glazedunits.uses(row, field)
+        case ObstructionRow() | ShadingDeviceRow():
+            return shading.uses(row, field)
+        case OpeningRow():
             return False
     return True
 
@@ -104,6 +120,8 @@ _AIR_SYSTEM_FIELDS: dict[str, Callable[[AirSystemRow], bool]] = {
     "running_hours": lambda row: row.kind != "natural" or row.rate is not None,
     "heat_recovery": lambda row: row.kind == "balanced",
     "bypass": lambda row: row.heat_recovery > 0,
+    "fan_power": lambda row: row.kind != "natural",
+    "night_cooling": lambda _: False,
 }
 
 _USAGE_FIELDS: dict[str, Callable[[UsageRow], bool]] = {

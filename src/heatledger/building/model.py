@@ -6,7 +6,10 @@ from dataclasses import dataclass
 from typing import Literal, TypeAlias
 
 from heatledger.building.defaults import DefaultUsed
+from heatledger.building.monthlytable import MonthlyTable
+from heatledger.building.shading import Obstruction, ShadingDevice
 from heatledger.inputs.rows import (
+    BuildUpRow,
     ElementRow,
     GlazedUnitRow,
     GroundFloorRow,
@@ -20,19 +23,64 @@ __all__ = [
     "AirSystem",
     "BuildUp",
     "Building",
+    "EdgeInsulation",
     "Element",
+    "Fasteners",
     "GlazedUnit",
     "GroundFloor",
     "Layer",
+    "MaterialSource",
     "Opening",
+    "Panes",
     "Project",
+    "SecondMaterial",
+    "Shutter",
     "ThermalBridge",
     "Usage",
+    "Voids",
     "Zone",
 ]
 
 AirLayer: TypeAlias = Literal["", "unventilated", "slightly ventilated", "well ventilated"]
 """Kind of an air layer; empty for a layer of material."""
+
+GapLevel: TypeAlias = Literal["none", "minor", "major"]
+"""Gaps in insulation: none, through the layer, with air moving behind it."""
+
+ShutterTightness: TypeAlias = Literal["very high", "high", "average", "low", "tight"]
+"""Air permeability of a closed shutter."""
+
+
+@dataclass(frozen=True)
+class SecondMaterial:
+    """What bridges a layer, and the share of the face it takes [-]; figures as of a layer."""
+
+    material: str
+    conductivity: float
+    density: float
+    specific_heat: float
+    share: float
+
+
+@dataclass(frozen=True)
+class Voids:
+    """Air voids of a block: width and depth of one [m], share of the face in each row [-], rows of them."""
+
+    width: float
+    depth: float
+    share: float
+    rows: int
+
+
+@dataclass(frozen=True)
+class Fasteners:
+    """Metal through insulation: number [1/m²], conductivity [W/(m·K)], cross-section of one [m²], length in it [m]."""
+
+    number: float
+    conductivity: float
+    cross_section: float
+    depth: float | None
+    """None: through the whole layer."""
 
 
 @dataclass(frozen=True)
@@ -45,6 +93,22 @@ class Layer:
     density: float
     specific_heat: float
     air: AirLayer
+    origin: BuildUpRow
+    second: SecondMaterial | None = None
+    voids: Voids | None = None
+    inner_emissivity: float = 0.9
+    outer_emissivity: float = 0.9
+    """Of the faces of an air layer or of voids. [-]"""
+    air_openings: float = 1000.0
+    """Of a slightly ventilated air layer. [mm²/m]"""
+    fasteners: Fasteners | None = None
+    gaps: GapLevel = "none"
+    rain: float | None = None
+    """Under the insulation of an inverted roof. [mm/d]"""
+    drainage: float = 0.04
+    """Share of the rain that is drained times what it takes along. [W·d/(m²·K·mm)]"""
+    taper: str = "none"
+    """Shape in plan of a layer that falls to nothing; its thickness is the greatest one."""
 
 
 @dataclass(frozen=True)
@@ -56,24 +120,64 @@ class BuildUp:
 
 
 @dataclass(frozen=True)
+class Panes:
+    """Glass for U by EN 673: number of panes, gap between them [m], its gas, emissivity of the coating [-]."""
+
+    number: int
+    gap: float
+    gas: str
+    coating: float | None
+    """None: no coating."""
+
+
+@dataclass(frozen=True)
+class Shutter:
+    """A shutter: own resistance [m²·K/W], air permeability when closed, share of the time it is closed [-]."""
+
+    resistance: float
+    tightness: ShutterTightness
+    closed_share: float
+
+
+@dataclass(frozen=True)
 class GlazedUnit:
-    """Glass with frame: U of the whole [W/(m²·K)], g at normal incidence [-], frame share [-]."""
+    """Glass with frame: g at normal incidence [-], and U of the whole or what it is made of [W/(m²·K)]."""
 
     name: str
-    u_value: float
+    u_value: float | None
+    """Of the whole, as declared; None: from its parts."""
     g_value: float
     frame_share: float
+    """[-]"""
     origin: GlazedUnitRow
+    frame_width: float | None = None
+    """Replaces the frame share. [m]"""
+    glazing_u_value: float | None = None
+    frame_u_value: float | None = None
+    edge: float = 0.0
+    """ψ of the glass edge. [W/(m·K)]"""
+    panes: Panes | None = None
+    shutter: Shutter | None = None
 
 
 @dataclass(frozen=True)
 class Opening:
-    """Alike windows, doors or rooflights: total area [m²]."""
+    """Alike windows, doors or rooflights: size of one [m] and their number."""
 
     name: str
     glazed_unit: GlazedUnit
-    area: float
+    width: float
+    height: float
+    count: int
+    obstruction: Obstruction | None
+    """Its own, else that of its element."""
+    shading: ShadingDevice | None
     origin: OpeningRow
+
+    @property
+    def area(self) -> float:
+        """Of all of them. [m²]"""
+        return self.count * self.width * self.height
 
 
 @dataclass(frozen=True)
@@ -92,6 +196,8 @@ class Element:
     tilt: float
     absorptance: float
     openings: tuple[Opening, ...]
+    obstruction: Obstruction | None
+    """Only its skyline counts for the element itself."""
     origin: ElementRow
 
     @property
@@ -106,26 +212,68 @@ class Element:
 
 
 @dataclass(frozen=True)
+class EdgeInsulation:
+    """A strip along the edge of a slab: its width or depth [m], resistance [m²·K/W], thickness [m]."""
+
+    vertical: bool
+    depth: float
+    resistance: float
+    thickness: float
+
+
+@dataclass(frozen=True)
 class GroundFloor:
-    """A slab on the ground: area [m²], exposed perimeter [m], wall thickness [m]."""
+    """A floor with the ground beneath it; what its type has no use for is 0 or None."""
 
     name: str
     zone: str
+    type: str
     area: float
+    """[m²]"""
     perimeter: float
+    """Exposed. [m]"""
     build_up: BuildUp | None
+    """Of the floor of the zone."""
     u_value: float | None
+    """Where no build-up is given, with the surface resistances 0.17 and 0.04 m²·K/W. [W/(m²·K)]"""
     wall_thickness: float
+    """[m]"""
     soil: str
+    edge: EdgeInsulation | None
+    height: float
+    """Of the space below, above the ground outside. [m]"""
+    outer_wall_u_value: float
+    """Of the space below, above the ground outside. [W/(m²·K)]"""
+    vent_area: float
+    """[m²/m]"""
+    wind_speed: float
+    """[m/s]"""
+    ground_resistance: float
+    """Of the floor of the space below. [m²·K/W]"""
+    depth: float
+    """Of the basement's floor below the ground outside. [m]"""
+    basement_wall: BuildUp | None
+    """In the ground."""
+    basement_volume: float
+    """[m³]"""
+    basement_air_change: float
+    """[1/h]"""
     origin: GroundFloorRow
+
+    @property
+    def wall_area(self) -> float:
+        """Walls in the ground that enclose the zone itself. [m²]"""
+        return self.depth * self.perimeter if self.type == "heated basement" else 0.0
 
 
 @dataclass(frozen=True)
 class ThermalBridge:
-    """Extra heat flow to outdoors: ψ·l + χ·n. [W/K]"""
+    """Extra heat flow: ψ·l + χ·n. [W/K]"""
 
     name: str
     zone: str
+    faces: str
+    """``outdoors`` or the name of the zone it leads to."""
     coefficient: float
     origin: ThermalBridgeRow
 
@@ -141,15 +289,29 @@ class AirSystem:
     running_share: float
     heat_recovery: float
     bypass: bool
+    frost_limit: float | None
+    """Outdoor temperature below which no more heat is recovered than at it. [°C]"""
+    fan_power: float
+    """Per outdoor air flow. [W/(m³/h)]"""
+    night_cooling: float
+    """Additional air change of the night. [1/h]"""
+    night_cooling_months: tuple[int, ...]
 
 
 @dataclass(frozen=True)
 class Usage:
-    """Set-points [°C]; people [1/m²], their heat [W] and presence [-]; electricity released [W/m²]; fresh air."""
+    """Set-points [°C]; hours and days in use; people [1/m²], their heat [W] and presence [-]; electricity [W/m²]."""
 
     name: str
     heating_set_point: float
     cooling_set_point: float
+    setback: float | None
+    """[°C]"""
+    heated_hours: float
+    """On a day in use. [h]"""
+    days_in_use: float
+    """In a week. [d]"""
+    months_out_of_use: tuple[int, ...]
     people_per_area: float
     heat_per_person: float
     presence: float
@@ -209,11 +371,33 @@ class Project:
     longitude: float | None
     time_zone: float | None
     ground_reflectance: float
+    glass_by_hour: bool
+    """Whether sun through glass follows the angle of every hour."""
     exposure: Literal["open", "normal", "sheltered"]
     dimensions: str
     sea_level_air: bool
     method: str
+    design_inside: float
+    """For the temperatures inside the build-ups. [°C]"""
+    design_outside: float | None
+    """None: mean of the coldest month. [°C]"""
+    compared: tuple[BuildUp, BuildUp] | None
+    """Build-ups to be set side by side."""
     origin: ProjectRow
+    monthly_climate: MonthlyTable | None = None
+    """Where the weather is a monthly table."""
+
+
+@dataclass(frozen=True)
+class MaterialSource:
+    """Where the values of a material in use come from, if not from an unchanged shipped row."""
+
+    name: str
+    own: bool
+    """Values of the user, else the shipped table because the sheet has no such row."""
+    source: str
+    sheet: str
+    cell: str
 
 
 @dataclass(frozen=True)
@@ -226,3 +410,4 @@ class Building:
     ground_floors: tuple[GroundFloor, ...]
     thermal_bridges: tuple[ThermalBridge, ...]
     defaults: tuple[DefaultUsed, ...]
+    materials: tuple[MaterialSource, ...]

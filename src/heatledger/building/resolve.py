@@ -6,32 +6,32 @@ from collections import defaultdict
 from typing import TYPE_CHECKING, TypeVar
 
 from heatledger.building.defaults import defaults_that_count
+from heatledger.building.glazing import glazed_unit
+from heatledger.building.layers import material_sources, resolve_build_ups
 from heatledger.building.model import (
     AirSystem,
     Building,
     BuildUp,
+    EdgeInsulation,
     Element,
     GlazedUnit,
     GroundFloor,
-    Layer,
     Opening,
     Project,
     ThermalBridge,
     Usage,
     Zone,
 )
+from heatledger.building.monthlytable import MonthlyTable, monthly_table
+from heatledger.building.shading import Obstruction, ShadingDevice, resolve_obstruction, resolve_shading_device
 from heatledger.inputs.crosschecks import default_tilt, folded, is_level
-from heatledger.inputs.rows import AIR_LAYERS, NEIGHBOUR, OUTDOORS
+from heatledger.inputs.rows import NEIGHBOUR, OUTDOORS
 
 if TYPE_CHECKING:
-    from heatledger.building.model import AirLayer
     from heatledger.inputs.rows import (
         AirSystemRow,
-        BuildUpRow,
         ElementRow,
-        GlazedUnitRow,
         GroundFloorRow,
-        MaterialRow,
         OpeningRow,
         ProjectRow,
         Rows,
@@ -62,23 +62,33 @@ def resolve(rows: Rows) -> Building:
     """
     usages = {folded(row.name): _usage(row) for row in rows.usages}
     systems = {folded(row.name): _air_system(row) for row in rows.air_systems}
-    units = {folded(row.name): _glazed_unit(row) for row in rows.glazed_units}
+    units = {folded(row.name): glazed_unit(row) for row in rows.glazed_units}
     zone_names = {folded(row.name): row.name for row in rows.zones}
-    build_ups = _build_ups(rows)
+    build_ups = resolve_build_ups(rows)
+    obstructions = {folded(row.name): resolve_obstruction(row) for row in rows.obstructions}
+    devices = {folded(row.name): resolve_shading_device(row) for row in rows.shading_devices}
+    behind = {folded(row.name): obstructions.get(folded(row.obstruction)) for row in rows.elements}
     openings: dict[str, list[Opening]] = defaultdict(list)
     for row in rows.openings:
-        openings[folded(row.element)].append(_opening(row, units))
+        element = folded(row.element)
+        obstruction = obstructions.get(folded(row.obstruction), behind[element])
+        openings[element].append(_opening(row, units, obstruction, devices.get(folded(row.shading))))
     return Building(
-        _project(rows.project),
+        _project(rows.project, build_ups, monthly_table(rows)),
         tuple(_zone(row, usages, systems) for row in rows.zones),
-        tuple(_element(row, zone_names, build_ups, openings[folded(row.name)]) for row in rows.elements),
+        tuple(
+            _element(row, zone_names, build_ups, openings[folded(row.name)], behind[folded(row.name)])
+            for row in rows.elements
+        ),
         tuple(_ground_floor(row, zone_names, build_ups) for row in rows.ground_floors),
         tuple(_thermal_bridge(row, zone_names) for row in rows.thermal_bridges),
         defaults_that_count(rows),
+        material_sources(rows),
     )
 
 
-def _project(row: ProjectRow) -> Project:
+def _project(row: ProjectRow, build_ups: dict[str, BuildUp], table: MonthlyTable | None) -> Project:
+    compared = (build_ups[folded(row.compared)], build_ups[folded(row.compared_with)]) if row.compared else None
     return Project(
         row.project,
         row.client,
@@ -91,11 +101,16 @@ def _project(row: ProjectRow) -> Project:
         row.longitude,
         row.time_zone,
         row.ground_reflectance,
+        row.glass_angle == "by hour",
         row.site_exposure,
         row.dimensions,
         row.air_density == "sea level",
         row.method,
+        row.design_inside,
+        row.design_outside,
+        compared,
         row,
+        table,
     )
 
 
@@ -105,6 +120,10 @@ def _usage(row: UsageRow) -> Usage:
         row.name,
         row.heating_set_point,
         row.cooling_set_point,
+        row.setback,
+        row.heated_hours,
+        row.days_in_use,
+        row.months_out_of_use,
         1 / row.area_per_person if row.area_per_person else 0.0,
         row.heat_per_person,
         row.presence / 24,
@@ -123,49 +142,26 @@ def _air_system(row: AirSystemRow) -> AirSystem:
         row.running_hours / 24,
         row.heat_recovery / 100,
         row.bypass == "yes",
+        row.frost_limit,
+        row.fan_power,
+        row.night_cooling,
+        row.night_cooling_months,
     )
 
 
-def _glazed_unit(row: GlazedUnitRow) -> GlazedUnit:
-    return GlazedUnit(row.name, row.u_value, row.g_value, row.frame_share / 100, row)
-
-
-def _opening(row: OpeningRow, units: dict[str, GlazedUnit]) -> Opening:
-    return Opening(row.name, units[folded(row.glazed_unit)], row.count * row.width * row.height, row)
-
-
-def _build_ups(rows: Rows) -> dict[str, BuildUp]:
-    materials = {folded(row.name): row for row in rows.materials}
-    layers: dict[str, list[BuildUpRow]] = defaultdict(list)
-    for row in rows.build_ups:
-        layers[folded(row.name)].append(row)
-    return {
-        name: BuildUp(
-            found[0].name, tuple(_layer(row, materials) for row in sorted(found, key=lambda layer: layer.layer))
-        )
-        for name, found in layers.items()
-    }
-
-
-def _layer(row: BuildUpRow, materials: dict[str, MaterialRow]) -> Layer:
-    thickness = row.thickness / 1000
-    air = _AIR.get(row.material)
-    if air:
-        return Layer(row.material, thickness, 0.0, 0.0, 0.0, air)
-    material = materials[folded(row.material)]
-    stores = material.density is not None and material.specific_heat is not None
-    return Layer(
-        material.name,
-        thickness,
-        material.conductivity,
-        (material.density or 0.0) if stores else 0.0,
-        (material.specific_heat or 0.0) if stores else 0.0,
-        "",
-    )
+def _opening(
+    row: OpeningRow, units: dict[str, GlazedUnit], obstruction: Obstruction | None, shading: ShadingDevice | None
+) -> Opening:
+    unit = units[folded(row.glazed_unit)]
+    return Opening(row.name, unit, row.width, row.height, row.count, obstruction, shading, row)
 
 
 def _element(
-    row: ElementRow, zone_names: dict[str, str], build_ups: dict[str, BuildUp], openings: list[Opening]
+    row: ElementRow,
+    zone_names: dict[str, str],
+    build_ups: dict[str, BuildUp],
+    openings: list[Opening],
+    obstruction: Obstruction | None,
 ) -> Element:
     tilt = default_tilt(row)
     return Element(
@@ -180,6 +176,7 @@ def _element(
         tilt,
         row.absorptance,
         tuple(openings),
+        obstruction,
         row,
     )
 
@@ -188,20 +185,40 @@ def _ground_floor(row: GroundFloorRow, zone_names: dict[str, str], build_ups: di
     return GroundFloor(
         row.name,
         zone_names[folded(row.zone)],
+        row.type,
         row.area,
         row.perimeter,
         build_ups[folded(row.build_up)] if row.build_up else None,
         row.u_value,
         row.wall_thickness,
         row.soil,
+        _edge(row),
+        row.height_above_ground or 0.0,
+        row.outer_wall_u_value or 0.0,
+        row.vent_area or 0.0,
+        row.wind_speed,
+        row.ground_resistance,
+        row.basement_depth or 0.0,
+        build_ups[folded(row.basement_wall)] if row.basement_wall else None,
+        row.basement_volume or 0.0,
+        row.basement_air_change,
         row,
     )
+
+
+def _edge(row: GroundFloorRow) -> EdgeInsulation | None:
+    """Edge insulation of a slab; checked rows describe it whole or not at all."""
+    if row.edge_insulation == "none" or row.edge_depth is None:
+        return None
+    thickness = (row.edge_thickness or 0.0) / 1000
+    return EdgeInsulation(row.edge_insulation == "vertical", row.edge_depth, row.edge_resistance or 0.0, thickness)
 
 
 def _thermal_bridge(row: ThermalBridgeRow, zone_names: dict[str, str]) -> ThermalBridge:
     linear = (row.length or 0.0) * (row.linear_transmittance or 0.0)
     point = (row.count or 0) * (row.point_transmittance or 0.0)
-    return ThermalBridge(row.name, zone_names[folded(row.zone)], linear + point, row)
+    faces = zone_names.get(folded(row.faces), OUTDOORS)
+    return ThermalBridge(row.name, zone_names[folded(row.zone)], faces, linear + point, row)
 
 
 def _zone(row: ZoneRow, usages: dict[str, Usage], systems: dict[str, AirSystem]) -> Zone:
@@ -228,8 +245,3 @@ def _first(override: float | None, usual: float | None) -> float:
     if override is not None:
         return override
     return usual if usual is not None else float("nan")
-
-
-_AIR: dict[str, AirLayer] = dict(
-    zip(AIR_LAYERS, ("unventilated", "slightly ventilated", "well ventilated"), strict=True)
-)

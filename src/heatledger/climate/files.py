@@ -2,17 +2,22 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable, Mapping
 from dataclasses import replace
 from difflib import get_close_matches
 from pathlib import Path
 
 from heatledger.climate.formats import read_climate
 from heatledger.climate.hourly import HourlyClimate
+from heatledger.climate.monthly_table import MONTHLY_TABLE
+from heatledger.climate.readings import Readings
 from heatledger.climate.shipped import shipped_climates, shipped_file
 from heatledger.climate.sun import Site
 from heatledger.errors import InputError, Problem
 
 __all__ = ["open_climate", "shipped_climates"]
+
+UNITS = {"latitude": "°", "longitude": "°", "time_zone": " h"}
 
 LARGEST_FILE = 50_000_000
 """A year of hours takes 2 MB; much more is something else. [byte]"""
@@ -34,7 +39,8 @@ def open_climate(
     Parameters
     ----------
     weather : str
-        Name of a shipped climate, case and outer spaces ignored, or path of an EPW, TMY3 or own hourly file.
+        Name of a shipped climate, case and outer spaces ignored, or path of an
+        hourly file of a known format.
     folder : Path
         Folder that relative paths start from: that of the workbook.
     latitude, longitude : float, optional
@@ -51,8 +57,8 @@ def open_climate(
     """
     try:
         path = shipped_file(weather) or _own_file(weather, folder)
-        climate = _read(path, path.name)
-        return _placed(climate, latitude=latitude, longitude=longitude, time_zone=time_zone)
+        place = {"latitude": latitude, "longitude": longitude, "time_zone": time_zone}
+        return _read(path, path.name, lambda readings: _placed(readings, place))
     except InputError as error:
         raise InputError(
             replace(problem, sheet=sheet, cell=cell, column=column) for problem in error.problems
@@ -74,23 +80,27 @@ def _own_file(weather: str, folder: Path) -> Path:
 
 
 def _unknown_name(name: str) -> Problem:
-    known = {title.casefold(): title for title in shipped_climates()}
+    if name.casefold() == MONTHLY_TABLE:
+        fix = "A monthly table stands in a workbook: check or run the workbook."
+        return Problem(f"'{name}'", "the name of a shipped climate or the path of a weather file", fix)
+    known = {title.casefold(): title for title in (*shipped_climates(), MONTHLY_TABLE)}
     nearest = get_close_matches(name.casefold(), known, n=1)
-    names = ", ".join(known.values())
+    names = ", ".join(shipped_climates())
     fix = f"Did you mean '{known[nearest[0]]}'?" if nearest else f"Shipped climates are {names}."
-    return Problem(f"the text '{name}'", "the name of a shipped climate or the path of a weather file", fix)
+    expected = f"the name of a shipped climate, the path of a weather file, or '{MONTHLY_TABLE}'"
+    return Problem(f"the text '{name}'", expected, fix)
 
 
-def _read(path: Path, name: str) -> HourlyClimate:
+def _read(path: Path, name: str, moved: Callable[[Readings], Readings]) -> HourlyClimate:
     try:
-        climate = read_climate(_content(path))
+        climate = read_climate(_content(path), moved)
     except OSError as error:
         fix = "Close it in other programs and check that you may read it."
         problem = Problem(f"a file that cannot be opened ({error.strerror})", "a weather file", fix)
         raise InputError([replace(problem, file=name)]) from error
     except InputError as error:
         raise InputError(replace(problem, file=name) for problem in error.problems) from error
-    return climate if climate.name else replace(climate, name=path.stem)
+    return climate if climate.name else replace(climate, name=path.stem).with_sun(climate.sun)
 
 
 def _content(path: Path) -> bytes:
@@ -100,22 +110,15 @@ def _content(path: Path) -> bytes:
     return path.read_bytes()
 
 
-def _placed(
-    climate: HourlyClimate, *, latitude: float | None, longitude: float | None, time_zone: float | None
-) -> HourlyClimate:
-    """The climate at the workbook's place where that differs from the file's, each difference noted."""
-    given = {"latitude": (latitude, "°"), "longitude": (longitude, "°"), "time_zone": (time_zone, " h")}
+def _placed(readings: Readings, given: Mapping[str, float | None]) -> Readings:
+    """The readings at the workbook's place where that differs from the file's, each difference noted."""
     changed = {
-        field: (value, unit)
-        for field, (value, unit) in given.items()
-        if value is not None and value != getattr(climate.site, field)
+        field: value for field, value in given.items() if value is not None and value != getattr(readings.site, field)
     }
-    if not changed:
-        return climate
     remarks = tuple(
-        f"The {field.replace('_', ' ')} {value:g}{unit} of the workbook is used instead of "
-        f"{getattr(climate.site, field):g}{unit} of the weather file."
-        for field, (value, unit) in changed.items()
+        f"The {field.replace('_', ' ')} {value:g}{UNITS[field]} of the workbook is used instead of "
+        f"{getattr(readings.site, field):g}{UNITS[field]} of the weather file."
+        for field, value in changed.items()
     )
-    site: Site = climate.site._replace(**{field: value for field, (value, _) in changed.items()})
-    return climate.moved(site, remarks)
+    site: Site = readings.site._replace(**changed)
+    return replace(readings, site=site, remarks=(*readings.remarks, *remarks))

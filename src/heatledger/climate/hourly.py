@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass, field, replace
+from dataclasses import dataclass, field
 from functools import cached_property
 
 import numpy as np
@@ -12,6 +12,8 @@ from heatledger.climate.closure import closure_errors, closure_note
 from heatledger.climate.model import DAYS_OF_MONTH, FloatArray, month_of_hour
 from heatledger.climate.planes import plane_sums
 from heatledger.climate.sun import Site, SunPath, sun_path
+from heatledger.climate.sunlight import sunlight
+from heatledger.climate.surfaces import Sunlight, Surfaces
 
 __all__ = ["HourlyClimate", "Hours"]
 
@@ -111,6 +113,11 @@ class HourlyClimate:
         """The sun in each hour, fields of shape (8760,)."""
         return sun_path(self.site, self.sun_offset)
 
+    def with_sun(self, sun: SunPath) -> HourlyClimate:
+        """The climate itself, given the sun of its site and instants: working it out takes as long as all the rest."""
+        vars(self)["sun"] = sun  # where the cached property keeps it
+        return self
+
     @cached_property
     def closure_errors(self) -> dict[float, float]:
         """Closure error by shift of the sun's instant in hours [-]."""
@@ -135,23 +142,30 @@ class HourlyClimate:
         tilts, azimuths = np.broadcast_arrays(
             np.atleast_1d(np.asarray(tilt, dtype=np.float64)), np.atleast_1d(np.asarray(azimuth, dtype=np.float64))
         )
-        lit = self._lit
-        light = (self.hours.global_horizontal[lit], self.hours.direct_normal[lit], self.hours.diffuse_horizontal[lit])
-        months = np.eye(12)[month_of_hour()[lit]] / 1000.0
-        return plane_sums(
-            tilts, azimuths, self.sun.at(lit), light, ground_reflectance=ground_reflectance, weights=months
-        )
+        sun, light, months = self._lit_hours
+        return plane_sums(tilts, azimuths, sun, light, ground_reflectance=ground_reflectance, weights=months)
+
+    def sunlight(self, surfaces: Surfaces, ground_reflectance: float) -> Sunlight:
+        """Irradiation of surfaces behind obstructions in each month, fields of shape (n, 12) [kWh/m²].
+
+        Parameters
+        ----------
+        surfaces : Surfaces
+            n of them.
+        ground_reflectance : float
+            Share of the global irradiance that the ground reflects. [-]
+        """
+        sun, light, months = self._lit_hours
+        return sunlight(surfaces, sun, light, ground_reflectance=ground_reflectance, weights=months)
 
     def heating_degree_days(self, base: float) -> FloatArray:
         """Degree days of each month from daily means below ``base`` [°C], shape (12,) [K·d]."""
         daily_means = self.hours.temperature.reshape(365, 24).mean(axis=1)
         return np.bincount(month_of_hour()[::24], np.maximum(base - daily_means, 0.0)).astype(np.float64)
 
-    def moved(self, site: Site, remarks: tuple[str, ...]) -> HourlyClimate:
-        """The same readings taken to hold at another site, with further remarks."""
-        return replace(self, site=site, remarks=(*self.remarks, *remarks))
-
     @cached_property
-    def _lit(self) -> np.ndarray[tuple[int], np.dtype[np.bool_]]:
-        """Hours with any light: half of the year, so half of the work."""
-        return np.asarray(np.any([values > 0 for values in self.hours.light], axis=0))
+    def _lit_hours(self) -> tuple[SunPath, tuple[FloatArray, FloatArray, FloatArray], FloatArray]:
+        """Sun, light and weights of the months in hours with any light: half of the year, so half of the work."""
+        lit = np.asarray(np.any([values > 0 for values in self.hours.light], axis=0))
+        light = (self.hours.global_horizontal[lit], self.hours.direct_normal[lit], self.hours.diffuse_horizontal[lit])
+        return self.sun.at(lit), light, np.eye(12)[month_of_hour()[lit]] / 1000.0

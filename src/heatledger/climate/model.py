@@ -2,10 +2,13 @@
 
 from __future__ import annotations
 
-from typing import Protocol, TypeAlias
+from typing import TYPE_CHECKING, Protocol, TypeAlias
 
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
+
+if TYPE_CHECKING:
+    from heatledger.climate.surfaces import Sunlight, Surfaces
 
 __all__ = ["DAYS_OF_MONTH", "HOURS_OF_YEAR", "MONTH_NAMES", "Climate", "FloatArray", "month_of_hour"]
 
@@ -88,6 +91,28 @@ class Climate(Protocol):
         -------
         ndarray, shape (n, 12)
             Beam, sky and ground-reflected together. [kWh/m²]
+        """
+        ...
+
+    def sunlight(self, surfaces: Surfaces, ground_reflectance: float) -> Sunlight:
+        """Irradiation of surfaces behind obstructions, under movable shading, or through glass at an angle.
+
+        Parameters
+        ----------
+        surfaces : Surfaces
+            n of them.
+        ground_reflectance : float
+            Share of the global irradiance that the ground reflects. [-]
+
+        Returns
+        -------
+        Sunlight
+            Fields of shape (n, 12). [kWh/m²]
+
+        Raises
+        ------
+        InputError
+            If the climate holds no hours to follow the sun through.
         """
         ...
 

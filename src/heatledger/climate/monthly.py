@@ -9,6 +9,7 @@ import numpy as np
 from numpy.typing import ArrayLike
 
 from heatledger.climate.model import DAYS_OF_MONTH, FloatArray
+from heatledger.climate.surfaces import Sunlight, Surfaces
 from heatledger.errors import InputError, Problem
 
 __all__ = ["MonthlyClimate"]
@@ -115,6 +116,25 @@ class MonthlyClimate:
         if missing:
             raise InputError(self._missing(plane) for plane in missing)
         return np.array([self.planes[plane] for plane in wanted]).reshape(-1, 12)
+
+    def sunlight(self, surfaces: Surfaces, ground_reflectance: float) -> Sunlight:
+        """Never given: a table of months does not say where the sun stands in each hour.
+
+        Raises
+        ------
+        InputError
+            Always.
+        """
+        raise InputError(
+            [
+                Problem(
+                    "a table of months",
+                    "a climate of hours, since obstructions, shading by irradiance and glass by hour follow the sun",
+                    "Give hourly weather, or leave these out.",
+                    file=self.name,
+                )
+            ]
+        )
 
     def heating_degree_days(self, base: float) -> FloatArray:
         """Degree days below ``base`` [°C] from the monthly means: a lower bound, shape (12,) [K·d]."""

@@ -10,7 +10,7 @@ from pvlib import atmosphere, irradiance, solarposition
 
 from heatledger.climate.model import HOURS_OF_YEAR, FloatArray
 
-__all__ = ["REFERENCE_YEAR", "Site", "SunPath", "cos_zenith", "hour_instants", "sun_path"]
+__all__ = ["REFERENCE_YEAR", "Site", "SunPath", "cos_zenith", "hour_angle", "hour_instants", "sun_path"]
 
 REFERENCE_YEAR = 2001
 """Typical years join months of many years, so one year gives the sun: it has 365 days and stands near the
@@ -109,3 +109,13 @@ def cos_zenith(sun: SunPath, latitude: float, shift: float) -> FloatArray:
     turn = np.radians(15.0 * shift)
     result: FloatArray = np.sin(phi) * pole + np.cos(phi) * (noon * np.cos(turn) - west * np.sin(turn))
     return result
+
+
+def hour_angle(sun: SunPath, latitude: float) -> FloatArray:
+    """Angle by which the earth has to turn back for the sun to stand highest, shape (hours,) [rad].
+
+    Negative in the morning.
+    """
+    zenith, azimuth, phi = np.radians(sun.zenith), np.radians(sun.azimuth), np.radians(latitude)
+    noon = np.cos(phi) * np.cos(zenith) - np.sin(phi) * np.sin(zenith) * np.cos(azimuth)
+    return np.asarray(np.arctan2(-np.sin(zenith) * np.sin(azimuth), noon), dtype=np.float64)

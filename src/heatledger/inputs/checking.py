@@ -12,7 +12,7 @@ from heatledger.errors import Problem
 from heatledger.inputs.cells import Cell
 from heatledger.inputs.columns import COMPASS, Column, SheetRow, plain
 from heatledger.inputs.tables import Record
-from heatledger.inputs.wording import compass_word, describe, mend, nearest, typed_name
+from heatledger.inputs.wording import compass_word, describe, mend, month_numbers, nearest, typed_name, unit_slip
 
 __all__ = ["Checked", "check_record", "meant_word", "placed_row", "problem_at"]
 
@@ -110,7 +110,8 @@ def _fill_in(model: type[SheetRow], name: str, record: Record) -> str:
 
 def _looks_like_fraction(column: Column, value: object) -> bool:
     """Spreadsheet programs store ``78%`` as 0.78, which would be read as less than one percent."""
-    return column.unit == "%" and isinstance(value, float) and 0 < value <= 1
+    one_percent = column.small_share and value == 1
+    return column.unit == "%" and isinstance(value, float) and 0 < value <= 1 and not one_percent
 
 
 def _percent(column: Column) -> str:
@@ -131,12 +132,16 @@ def _validated(model: type[Row], values: dict[str, object], record: Record) -> t
         names = [str(fault["loc"][0]) for fault in error.errors() if fault["type"] != "missing"]
     columns = model.columns()
     return None, {
-        name: (describe(record.cells[name]), columns[name].expected, _out_of_bounds(columns[name]))
+        name: (describe(record.cells[name]), columns[name].expected, _out_of_bounds(columns[name], record.cells[name]))
         for name in dict.fromkeys(names)
     }
 
 
-def _out_of_bounds(column: Column) -> str:
+def _out_of_bounds(column: Column, cell: Cell) -> str:
+    """The likely meaning of a value in another unit, else a plain mend."""
+    meant = unit_slip(cell.value, column) if isinstance(cell.value, float) else ""
+    if meant:
+        return meant
     return f"Type a value in {column.unit} within these limits." if column.unit.strip("-") else "Correct the value."
 
 
@@ -154,6 +159,8 @@ def _typed_value(cell: Cell, column: Column) -> tuple[object, str]:
             return _azimuth(cell, column)
         case "choice":
             return _choice(cell, column)
+        case "months":
+            return _months(cell)
         case "name":
             return meant_word(typed_name(cell), column.choices), ""
         case "text":
@@ -178,6 +185,12 @@ def _choice(cell: Cell, column: Column) -> tuple[object, str]:
             return word, ""
     close = nearest(typed, column.choices)
     return None, f"Did you mean '{close}'?" if close else "Choose from the list of the cell."
+
+
+def _months(cell: Cell) -> tuple[object, str]:
+    """Month numbers of a text or of a single number."""
+    found = month_numbers(typed_name(cell))
+    return (found, "") if found else (None, "Type the first and the last month, such as 5-9.")
 
 
 def _azimuth(cell: Cell, column: Column) -> tuple[object, str]:

@@ -11,10 +11,22 @@ from pydantic.fields import FieldInfo
 
 from heatledger.inputs.cells import reference
 
-__all__ = ["COMPASS", "Column", "SheetRow", "azimuth", "choice", "integer", "name_from", "number", "plain", "text"]
+__all__ = [
+    "COMPASS",
+    "Column",
+    "SheetRow",
+    "azimuth",
+    "choice",
+    "integer",
+    "months",
+    "name_from",
+    "number",
+    "plain",
+    "text",
+]
 
-ColumnKind: TypeAlias = Literal["text", "number", "integer", "choice", "name", "azimuth"]
-"""``name`` refers to the first column of another sheet."""
+ColumnKind: TypeAlias = Literal["text", "number", "integer", "choice", "name", "azimuth", "months"]
+"""``name`` refers to the first column of another sheet; ``months`` is a range such as 5-9, read as month numbers."""
 
 COMPASS = ("N", "NNE", "NE", "ENE", "E", "ESE", "SE", "SSE", "S", "SSW", "SW", "WSW", "W", "WNW", "NW", "NNW")
 """Compass directions an azimuth may be typed as, clockwise from north in steps of 22.5°."""
@@ -42,6 +54,8 @@ class Column:
         Sheet whose first column lists the allowed names.
     above, at_least, below, at_most : float, optional
         Bounds of a number.
+    small_share : bool
+        Whether 1 in a column of percent means one percent; elsewhere it is taken for 100 % stored as a fraction.
     """
 
     title: str
@@ -57,6 +71,7 @@ class Column:
     at_least: float | None = None
     below: float | None = None
     at_most: float | None = None
+    small_share: bool = False
 
     @property
     def label(self) -> str:
@@ -86,6 +101,8 @@ class Column:
                 return f"{words + 'or ' if words else ''}a name from sheet {self.names_from}"
             case "azimuth":
                 return "degrees from north clockwise, 0 to 360, or a compass direction such as N, NNE, NE"
+            case "months":
+                return "months as numbers or words, such as 5-9, 11-2, Jun-Aug or 7"
             case "text":
                 return "a text"
 
@@ -126,6 +143,7 @@ def number(
     ge: float | None = None,
     lt: float | None = None,
     le: float | None = None,
+    small_share: bool = False,
 ) -> Any:
     """Declare a column of numbers with their bounds."""
     column = Column(
@@ -140,6 +158,7 @@ def number(
         at_least=ge,
         below=lt,
         at_most=le,
+        small_share=small_share,
     )
     return _field(column, default, gt=gt, ge=ge, lt=lt, le=le)
 
@@ -186,6 +205,11 @@ def name_from(
 ) -> Any:
     """Declare a column that refers to the first column of another sheet, or holds one of a few words."""
     return _field(Column(title, "name", help=help, required=required, choices=words, names_from=sheet), default="")
+
+
+def months(title: str, *, help: str, default_note: str = "") -> Any:  # noqa: A002
+    """Declare a column of calendar months; an empty cell means none."""
+    return _field(Column(title, "months", help=help, default_note=default_note), default=())
 
 
 def azimuth(title: str, *, help: str, default_note: str) -> Any:  # noqa: A002

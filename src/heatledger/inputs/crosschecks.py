@@ -7,11 +7,15 @@ from collections.abc import Callable, Iterator
 from typing import TypeAlias
 
 from heatledger.errors import Problem
+from heatledger.inputs.buildups import layers_together
 from heatledger.inputs.checking import problem_at
 from heatledger.inputs.columns import plain
+from heatledger.inputs.glazedunits import frame_in_opening
+from heatledger.inputs.monthlyclimate import monthly_climate_problems
 from heatledger.inputs.names import Typed
 from heatledger.inputs.rowchecks import crossed_set_points, default_tilt, is_level
-from heatledger.inputs.rows import NEIGHBOUR, OUTDOORS, BuildUpRow, Rows, UsageRow, ZoneRow
+from heatledger.inputs.rows import NEIGHBOUR, OUTDOORS, BuildUpRow, Rows, ThermalBridgeRow, UsageRow, ZoneRow
+from heatledger.inputs.shading import in_the_sun
 from heatledger.inputs.wording import folded, nearest
 
 __all__ = ["cross_check", "default_tilt", "folded", "is_level"]
@@ -33,7 +37,16 @@ def cross_check(rows: Rows, typed: Typed) -> list[Problem]:
     -------
     list of Problem
     """
-    checks: tuple[Check, ...] = (_zones, _zone_set_points, _layers, _opening_areas, _envelope_of_zones)
+    checks: tuple[Check, ...] = (
+        _zones,
+        _zone_set_points,
+        _layers,
+        _opening_areas,
+        _frames,
+        in_the_sun,
+        _envelope_of_zones,
+        monthly_climate_problems,
+    )
     return [problem for check in checks for problem in check(rows, typed)]
 
 
@@ -81,7 +94,9 @@ def _layers(rows: Rows, typed: Typed) -> Iterator[Problem]:
     typed_layers = Counter(map(folded, typed.words(BuildUpRow.sheet, "name")))
     for name, layers in build_ups.items():
         if len(layers) == typed_layers[name]:
-            yield from _numbering(sorted(layers, key=lambda layer: layer.layer))
+            in_order = sorted(layers, key=lambda layer: layer.layer)
+            yield from _numbering(in_order)
+            yield from layers_together(in_order)
 
 
 def _numbering(layers: list[BuildUpRow]) -> Iterator[Problem]:
@@ -104,6 +119,14 @@ def _opening_areas(rows: Rows, typed: Typed) -> Iterator[Problem]:
             found = f"{plain(element.area)} m² with {openings:.2f} m² of openings in '{element.name}'"
             fix = "Correct the gross area, or the sizes and number on sheet Openings."
             yield problem_at(element, "area", found, "an area that holds its openings", fix)
+
+
+def _frames(rows: Rows, typed: Typed) -> Iterator[Problem]:
+    units = {folded(unit.name): unit for unit in rows.glazed_units}
+    for opening in rows.openings:
+        unit = units.get(folded(opening.glazed_unit))
+        if unit is not None:
+            yield from frame_in_opening(opening, unit)
 
 
 def _envelope_of_zones(rows: Rows, typed: Typed) -> Iterator[Problem]:
@@ -154,8 +177,10 @@ def _zones_with_heat_path(rows: Rows, mentioned: set[str]) -> set[str]:
     """Zones from which heat can flow, also through other unconditioned zones, to a known temperature."""
     tied = {folded(zone.name) for zone in rows.zones if zone.conditioning != "unconditioned"} | mentioned
     tied |= {folded(floor.zone) for floor in rows.ground_floors}
-    tied |= {folded(element.zone) for element in rows.elements if folded(element.faces) == OUTDOORS}
     links = [(folded(element.zone), folded(element.faces)) for element in rows.elements]
+    bridges = filter(_carries_heat, rows.thermal_bridges)
+    links += [(folded(bridge.zone), folded(bridge.faces) or OUTDOORS) for bridge in bridges]
+    tied |= {one for one, other in links if other == OUTDOORS}
     grown = True
     while grown:
         before = len(tied)
@@ -164,3 +189,8 @@ def _zones_with_heat_path(rows: Rows, mentioned: set[str]) -> set[str]:
                 tied |= {one, other} - {OUTDOORS, NEIGHBOUR}
         grown = len(tied) > before
     return tied
+
+
+def _carries_heat(bridge: ThermalBridgeRow) -> bool:
+    linear = (bridge.length or 0.0) * (bridge.linear_transmittance or 0.0)
+    return linear + (bridge.count or 0) * (bridge.point_transmittance or 0.0) > 0

@@ -8,7 +8,8 @@ from dataclasses import dataclass, field
 from heatledger.errors import Problem
 from heatledger.inputs.checking import meant_word, placed_row, problem_at
 from heatledger.inputs.columns import Column, SheetRow
-from heatledger.inputs.rows import SHEETS
+from heatledger.inputs.prefilled import shipped_materials
+from heatledger.inputs.rows import AIR_LAYERS, SHEETS, MaterialRow
 from heatledger.inputs.tables import Record
 from heatledger.inputs.wording import folded, nearest, typed_name
 
@@ -68,11 +69,22 @@ def _references(model: type[SheetRow], name: str, column: Column, typed: Typed) 
         word = meant_word(_named(record, name), column.choices)
         if not word or folded(word) in allowed:
             continue
-        close = nearest(word, known)
+        if target is MaterialRow and folded(word) in shipped_materials():
+            continue
+        if meant_word(word, AIR_LAYERS) in AIR_LAYERS:
+            fix = f"Choose the air layer as Material, and what bridges it as {column.title}."
+            yield problem_at(placed_row(model, record), name, f"'{word}'", "a material", fix)
+            continue
+        close = nearest(word, known) or (_shipped_like(word) if target is MaterialRow else "")
         if close or all(names):
             add = f"Add '{word}' to sheet {column.names_from}, or choose from the list of the cell."
             fix = f"Did you mean '{close}'?" if close else add
             yield problem_at(placed_row(model, record), name, f"'{word}'", column.expected, fix)
+
+
+def _shipped_like(word: str) -> str:
+    """The shipped material that resembles a word."""
+    return nearest(word, (row.name for row in shipped_materials().values()), 0.75)
 
 
 def _named(record: Record, name: str) -> str:

@@ -3,26 +3,32 @@
 from __future__ import annotations
 
 import csv
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
+from functools import cache
 from importlib import resources
 from typing import TypeAlias
 
 from heatledger.inputs.columns import Column, SheetRow
-from heatledger.inputs.rows import SHEETS, MaterialRow, UsageRow
+from heatledger.inputs.rows import MONTHS, SHEETS, MaterialRow, MonthlyClimateRow, UsageRow
+from heatledger.inputs.wording import folded
 
-__all__ = ["Values", "blank_values", "example_values"]
+__all__ = ["Values", "blank_values", "example_values", "shipped_materials"]
 
 Values: TypeAlias = dict[str, list[dict[str, object]]]
 """Filled cells by sheet name: rows as field name and value."""
 
 
 def blank_values() -> Values:
-    """Rows of a blank workbook: the standard profiles of use and the shipped materials.
+    """Rows of a blank workbook: the standard profiles of use, the shipped materials and the names of the months.
 
     >>> sorted(blank_values())
-    ['Materials', 'Usage']
+    ['Materials', 'Monthly climate', 'Usage']
     """
-    return {UsageRow.sheet: _rows(UsageRow, "usage.csv"), MaterialRow.sheet: _rows(MaterialRow, "materials.csv")}
+    return {
+        UsageRow.sheet: _rows(UsageRow, "usage.csv"),
+        MaterialRow.sheet: _rows(MaterialRow, "materials.csv"),
+        MonthlyClimateRow.sheet: [{"month": month} for month in MONTHS],
+    }
 
 
 def example_values() -> Values:
@@ -31,6 +37,17 @@ def example_values() -> Values:
     return {
         model.sheet: _rows(model, f"example/{_file_name(model)}") + shipped.get(model.sheet, []) for model in SHEETS
     }
+
+
+@cache
+def shipped_materials() -> Mapping[str, MaterialRow]:
+    """The shipped materials by folded name, for build-ups whose material has no row of its own.
+
+    >>> shipped_materials()["concrete 2200"].conductivity
+    1.65
+    """
+    rows = (MaterialRow.model_validate(row) for row in _rows(MaterialRow, "materials.csv"))
+    return {folded(row.name): row for row in rows}
 
 
 def _file_name(model: type[SheetRow]) -> str:

@@ -6,21 +6,31 @@ from collections.abc import Callable, Iterator
 from typing import Any, TypeAlias
 
 from heatledger.errors import Problem
+from heatledger.inputs.buildups import BUILD_UP_RULES
 from heatledger.inputs.checking import Checked, problem_at
 from heatledger.inputs.columns import SheetRow, plain
+from heatledger.inputs.glazedunits import GLAZED_UNIT_RULES
+from heatledger.inputs.groundfloors import GROUND_FLOOR_RULES
 from heatledger.inputs.rows import (
     NEIGHBOUR,
     OUTDOORS,
     AirSystemRow,
+    BuildUpRow,
     ElementRow,
+    GlazedUnitRow,
     GroundFloorRow,
+    ProjectRow,
     ThermalBridgeRow,
     UsageRow,
     ZoneRow,
 )
+from heatledger.inputs.shading import SHADING_RULES
 from heatledger.inputs.wording import folded
 
 __all__ = ["check_row", "crossed_set_points", "default_tilt", "is_level"]
+
+HOURS_OF_DAY = 24.0
+DAYS_OF_WEEK = 7.0
 
 Rule: TypeAlias = tuple[type[SheetRow], frozenset[str], Callable[[Any], Iterator[Problem]]]
 """Row model, the fields a rule reads, and the rule."""
@@ -66,6 +76,41 @@ def _zone_usage(zone: ZoneRow) -> Iterator[Problem]:
 
 def _usage_set_points(usage: UsageRow) -> Iterator[Problem]:
     return crossed_set_points(usage, "cooling_set_point", usage.heating_set_point, usage.cooling_set_point)
+
+
+def _setback(usage: UsageRow) -> Iterator[Problem]:
+    reduced = usage.heated_hours < HOURS_OF_DAY or usage.days_in_use < DAYS_OF_WEEK or usage.months_out_of_use
+    if reduced and usage.setback is None:
+        expected = "the temperature kept in hours, on days or in months without use"
+        yield problem_at(usage, "setback", "an empty cell", expected, "Fill in the cell.")
+    if usage.setback is not None and usage.setback > usage.heating_set_point:
+        found = f"{plain(usage.setback)} °C with a heating set-point of {plain(usage.heating_set_point)} °C"
+        fix = "Correct one of the two temperatures."
+        yield problem_at(usage, "setback", found, "a setback not above the heating set-point", fix)
+
+
+def _night_cooling(system: AirSystemRow) -> Iterator[Problem]:
+    if system.night_cooling > 0 and not system.night_cooling_months:
+        yield problem_at(
+            system,
+            "night_cooling_months",
+            "an empty cell",
+            "the months of the night cooling",
+            "Type them, such as 5-9.",
+        )
+    if system.night_cooling_months and system.night_cooling == 0:
+        fix = "Fill in the air change, or clear the months."
+        yield problem_at(system, "night_cooling", "no air change", "the air change of the night cooling", fix)
+
+
+def _fans(system: AirSystemRow) -> Iterator[Problem]:
+    if system.kind == "natural" and system.fan_power > 0:
+        found = f"{plain(system.fan_power)} W/(m³/h) for a natural system"
+        yield problem_at(system, "fan_power", found, "0 or an empty cell", "Clear the cell, or correct the kind.")
+    if system.frost_limit is not None and system.heat_recovery == 0:
+        found = f"{plain(system.frost_limit)} °C without heat recovery"
+        fix = "Clear the cell, or fill in the heat recovery."
+        yield problem_at(system, "frost_limit", found, "an empty cell without heat recovery", fix)
 
 
 def _rate(system: AirSystemRow) -> Iterator[Problem]:
@@ -116,14 +161,45 @@ def _bridge(bridge: ThermalBridgeRow) -> Iterator[Problem]:
             yield problem_at(bridge, empty, "an empty cell", f"{words} together", "Fill in the cell.")
 
 
+def _bridge_sides(bridge: ThermalBridgeRow) -> Iterator[Problem]:
+    if bridge.faces and folded(bridge.faces) == folded(bridge.zone):
+        found, expected = f"'{bridge.faces}', the bridge's own zone", f"{OUTDOORS} or another zone"
+        yield problem_at(bridge, "faces", found, expected, "Choose the zone on the other side, or clear the cell.")
+
+
+def _compared(project: ProjectRow) -> Iterator[Problem]:
+    """Two different build-ups, or none."""
+    pair = {"compared": project.compared, "compared_with": project.compared_with}
+    if sum(map(bool, pair.values())) == 1:
+        empty = next(field for field, name in pair.items() if not name)
+        fix = "Choose a build-up, or clear both cells."
+        yield problem_at(project, empty, "an empty cell", "the other build-up of the comparison", fix)
+    elif project.compared and folded(project.compared) == folded(project.compared_with):
+        found = f"'{project.compared_with}' twice"
+        yield problem_at(project, "compared_with", found, "two different build-ups", "Choose another build-up.")
+
+
 _RULES: tuple[Rule, ...] = (
+    (ProjectRow, frozenset({"compared", "compared_with"}), _compared),
     (ZoneRow, frozenset({"name"}), _zone_name),
     (ZoneRow, frozenset({"conditioning", "usage"}), _zone_usage),
     (UsageRow, frozenset({"heating_set_point", "cooling_set_point"}), _usage_set_points),
+    (
+        UsageRow,
+        frozenset({"heating_set_point", "setback", "heated_hours", "days_in_use", "months_out_of_use"}),
+        _setback,
+    ),
     (AirSystemRow, frozenset({"kind", "rate_basis", "rate"}), _rate),
+    (AirSystemRow, frozenset({"night_cooling", "night_cooling_months"}), _night_cooling),
+    (AirSystemRow, frozenset({"kind", "fan_power", "heat_recovery", "frost_limit"}), _fans),
     (AirSystemRow, frozenset({"kind", "heat_recovery"}), _heat_recovery),
     (ElementRow, frozenset({"build_up", "u_value"}), _construction),
     (ElementRow, frozenset({"kind", "faces", "azimuth", "tilt"}), _direction),
     (GroundFloorRow, frozenset({"build_up", "u_value"}), _construction),
+    *SHADING_RULES,
+    *((BuildUpRow, fields, rule) for fields, rule in BUILD_UP_RULES),
+    *((GlazedUnitRow, fields, rule) for fields, rule in GLAZED_UNIT_RULES),
+    *((GroundFloorRow, fields, rule) for fields, rule in GROUND_FLOOR_RULES),
     (ThermalBridgeRow, frozenset({"length", "linear_transmittance", "count", "point_transmittance"}), _bridge),
+    (ThermalBridgeRow, frozenset({"zone", "faces"}), _bridge_sides),
 )

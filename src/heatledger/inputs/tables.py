@@ -105,14 +105,15 @@ def _fields(model: type[SheetRow]) -> dict[str, str]:
 
 
 def _header_row(model: type[SheetRow], cells: Cells) -> int | None:
-    """Row that holds the first column's title or most of the others; the fullest one, then the topmost."""
+    """Row that holds the first column's title or enough of the others; the fullest one, then the topmost."""
     titles = _fields(model)
     first = model.columns()[model.key()].title.casefold()
+    enough = max(2, sum(column.required for column in model.columns().values()) - 1)
     found: dict[int, set[str]] = {}
     for (row, _), cell in cells.items():
         if _title(cell) in titles:
             found.setdefault(row, set()).add(_title(cell))
-    candidates = [(len(words), -row) for row, words in found.items() if first in words or len(words) > len(titles) / 2]
+    candidates = [(len(words), -row) for row, words in found.items() if first in words or len(words) >= enough]
     return -max(candidates)[1] if candidates else None
 
 

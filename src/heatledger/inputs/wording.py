@@ -6,14 +6,29 @@ import math
 import re
 from collections.abc import Iterable
 from difflib import get_close_matches
+from typing import cast
 
 from heatledger.inputs.cells import Cell
 from heatledger.inputs.columns import COMPASS, Column, plain
 
-__all__ = ["as_number", "compass_word", "describe", "folded", "mend", "nearest", "typed_name"]
+__all__ = [
+    "as_number",
+    "compass_word",
+    "describe",
+    "folded",
+    "mend",
+    "month_numbers",
+    "nearest",
+    "typed_name",
+    "unit_slip",
+]
 
 _NUMBER_IN_TEXT = re.compile(r"^([-+−]?(?:\d+(?:[.,]\d+)?|[.,]\d+))\s*((?![\d.,]).*)$")
 _PERHAPS_THOUSANDS = re.compile(r"^[-+−]?[1-9]\d{0,2},\d{3}$")
+_MONTHS = (
+    *("january", "february", "march", "april", "may", "june"),
+    *("july", "august", "september", "october", "november", "december"),
+)
 _LONGEST = 60
 """Letters of a typed text that a sentence gives back."""
 
@@ -102,6 +117,62 @@ def compass_word(typed: str) -> str:
     for word in ("NORTH", "EAST", "SOUTH", "WEST"):
         letters = letters.replace(word, word[0])
     return letters if letters in COMPASS else ""
+
+
+_SLIPS: dict[str, tuple[tuple[float, str], ...]] = {
+    "m": ((1000, "mm"), (100, "cm")),
+    "mm": ((0.001, "m"),),
+    "-": ((100, "%"),),
+    "W/(m·K)": ((1000, "mW/(m·K)"),),
+}
+"""What a value is divided by if it was typed in another unit, by the unit of the column."""
+
+
+def unit_slip(value: float, column: Column) -> str:
+    """Mend for a value out of bounds that was typed in another unit; empty if none explains it.
+
+    >>> unit_slip(1200.0, Column("Width", "number", "m", above=0, at_most=50))
+    'Type 1.2 if 1200 mm is meant.'
+    """
+    if column.unit == "°C" and _within((value - 32) / 1.8, column):
+        return f"Type {(value - 32) / 1.8:.1f} if {plain(value)} °F is meant."
+    for divisor, unit in _SLIPS.get(column.unit, ()):
+        if _within(value / divisor, column):
+            return f"Type {plain(value / divisor)} if {plain(value)} {unit} is meant."
+    return ""
+
+
+def _within(value: float, column: Column) -> bool:
+    return (
+        (column.above is None or value > column.above)
+        and (column.at_least is None or value >= column.at_least)
+        and (column.below is None or value < column.below)
+        and (column.at_most is None or value <= column.at_most)
+    )
+
+
+def month_numbers(typed: str) -> tuple[int, ...]:
+    """Months of a text such as ``5-9``, ``11-2``, ``Jun to Aug`` or ``3, 7``; empty if it means none.
+
+    >>> month_numbers("11-2"), month_numbers("June to August"), month_numbers("3, 7"), month_numbers("13")
+    ((11, 12, 1, 2), (6, 7, 8), (3, 7), ())
+    """
+    found: list[int] = []
+    for part in re.split(r"[,;]", typed.casefold()):
+        ends = [_month(word) for word in re.split(r"[-–—]|\bto\b", part)]
+        if None in ends or len(ends) > 2:
+            return ()
+        first, last = cast("int", ends[0]), cast("int", ends[-1])
+        found += [(first + step - 1) % 12 + 1 for step in range((last - first) % 12 + 1)]
+    return tuple(dict.fromkeys(found))
+
+
+def _month(word: str) -> int | None:
+    """Number of a month typed as a number or by three letters or more."""
+    typed = word.strip(" .")
+    if typed.isdigit():
+        return int(typed) if 1 <= int(typed) <= 12 else None
+    return next((place for place, name in enumerate(_MONTHS, 1) if len(typed) > 2 and name.startswith(typed)), None)
 
 
 def nearest(word: str, known: Iterable[str], likeness: float = 0.6) -> str:

@@ -20,9 +20,12 @@ from heatledger.inputs.rows import (
     GlazedUnitRow,
     GroundFloorRow,
     MaterialRow,
+    MonthlyClimateRow,
+    ObstructionRow,
     OpeningRow,
     ProjectRow,
     Rows,
+    ShadingDeviceRow,
     ThermalBridgeRow,
     UsageRow,
     ZoneRow,
@@ -35,18 +38,15 @@ __all__ = ["check_rows"]
 Row = TypeVar("Row", bound=SheetRow)
 
 
-def check_rows(
-    sheets: Mapping[str, Cells], project_check: Callable[[ProjectRow], Iterable[Problem]] = lambda _: ()
-) -> Rows:
+def check_rows(sheets: Mapping[str, Cells], weather_check: Callable[[Rows], Iterable[Problem]] = lambda _: ()) -> Rows:
     """Check every input sheet of a workbook.
 
     Parameters
     ----------
     sheets : mapping of str to Cells
         Filled cells by sheet name; names are matched without regard to case.
-    project_check : callable, optional
-        Finds further problems of a sound Project sheet, such as weather that cannot be opened, so that they are
-        told in the same run.
+    weather_check : callable, optional
+        Finds problems of the weather that a sound Project sheet names, so that they are told in the same run.
 
     Returns
     -------
@@ -59,7 +59,7 @@ def check_rows(
     """
     collector = _Collector(sheets)
     project = collector.labels(ProjectRow)
-    project_problems = () if collector.problems else project_check(project)
+    names_weather = not collector.problems
     rows = Rows(
         project,
         collector.table(ZoneRow),
@@ -70,11 +70,15 @@ def check_rows(
         collector.table(GlazedUnitRow),
         collector.table(ElementRow),
         collector.table(OpeningRow),
+        collector.table(ObstructionRow),
+        collector.table(ShadingDeviceRow),
         collector.table(GroundFloorRow),
         collector.table(ThermalBridgeRow),
+        collector.table(MonthlyClimateRow),
     )
     typed = Typed(collector.records, frozenset(collector.unreadable))
-    problems = [*project_problems, *collector.problems, *check_names(typed), *cross_check(rows, typed)]
+    weather_problems = weather_check(rows) if names_weather else ()
+    problems = [*weather_problems, *collector.problems, *check_names(typed), *cross_check(rows, typed)]
     if problems:
         raise InputError(sorted(problems, key=_place_order))
     return rows

@@ -5,7 +5,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
 
-__all__ = ["AIR_HEAT_CAPACITY", "SHIELDING", "infiltration", "ventilation_coefficient"]
+__all__ = ["AIR_HEAT_CAPACITY", "SHIELDING", "infiltration", "recovered_share", "ventilation_coefficient"]
 
 AIR_HEAT_CAPACITY = 1200.0
 """Heat capacity of air per volume at sea level. [J/(m³·K)] ISO 13790:2008, 9.3.1."""
@@ -59,6 +59,43 @@ def infiltration(
     at_50_pascal = np.asarray(volume, dtype=float) * np.asarray(leakage, dtype=float)
     ratio = np.divide(flow_imbalance, at_50_pascal, out=np.zeros_like(at_50_pascal), where=at_50_pascal > 0)
     return np.asarray(at_50_pascal * e / (1 + f / e * ratio**2))
+
+
+def recovered_share(
+    efficiency: float, inside: float, outdoor: ArrayLike, frost_limit: float | None = None
+) -> NDArray[np.float64]:
+    """Share of the ventilation heat that a heat recovery gives back.
+
+    Parameters
+    ----------
+    efficiency : float
+        Temperature efficiency η. [-]
+    inside : float
+        Temperature of the exhaust. [°C]
+    outdoor : array_like, shape (12,)
+        Monthly mean outdoor temperature. [°C]
+    frost_limit : float, optional
+        Outdoor temperature below which no more heat is recovered than at it, lest the exhaust freezes. [°C]
+
+    Returns
+    -------
+    ndarray, shape (12,)
+        η; below the limit η·(θ_i − θ_limit)/(θ_i − θ_e). [-]
+
+    Notes
+    -----
+    Common practice, no source. With monthly means, hours below the limit in milder months do not show.
+
+    Examples
+    --------
+    >>> recovered_share(0.8, 20.0, [-10.0, 0.0, 10.0], -5.0).round(4).tolist()
+    [0.6667, 0.8, 0.8]
+    """
+    temperatures = np.asarray(outdoor, dtype=float)
+    if frost_limit is None or inside <= frost_limit:
+        return np.full(temperatures.shape, efficiency)
+    held_back = np.maximum(inside - temperatures, inside - frost_limit)
+    return np.asarray(efficiency * (inside - frost_limit) / held_back)
 
 
 def ventilation_coefficient(

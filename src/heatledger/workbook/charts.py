@@ -6,8 +6,8 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 from typing import Any, Literal, cast
 
-from openpyxl.chart import BarChart
-from openpyxl.chart.axis import ChartLines
+from openpyxl.chart import BarChart, ScatterChart
+from openpyxl.chart.axis import ChartLines, NumericAxis
 from openpyxl.chart.data_source import (
     AxDataSource,
     NumData,
@@ -22,7 +22,8 @@ from openpyxl.chart.data_source import (
 from openpyxl.chart.label import DataLabelList
 from openpyxl.chart.layout import Layout
 from openpyxl.chart.legend import Legend
-from openpyxl.chart.series import Series, SeriesLabel
+from openpyxl.chart.marker import Marker
+from openpyxl.chart.series import Series, SeriesLabel, XYSeries
 from openpyxl.chart.shapes import GraphicalProperties
 from openpyxl.chart.text import RichText, Text
 from openpyxl.chart.title import Title
@@ -42,7 +43,21 @@ from heatledger.inputs.cells import reference
 from heatledger.workbook.look import FONT, INK, RULE
 from heatledger.workbook.references import quoted
 
-__all__ = ["BLUE", "GREEN", "GREY", "ORANGE", "SKY", "VERMILLION", "YELLOW", "Area", "Bars", "add_bars", "add_columns"]
+__all__ = [
+    "BLUE",
+    "GREEN",
+    "GREY",
+    "ORANGE",
+    "SKY",
+    "VERMILLION",
+    "YELLOW",
+    "Area",
+    "Bars",
+    "Curve",
+    "add_bars",
+    "add_columns",
+    "add_curves",
+]
 
 BLUE, ORANGE, GREEN, SKY, VERMILLION, YELLOW = "0072B2", "E69F00", "009E73", "56B4E9", "D55E00", "F0E442"
 """Palette of Okabe and Ito (2008), Color Universal Design."""
@@ -93,6 +108,17 @@ class Bars:
     name: Area | str
     values: Area
     colour: str
+
+
+@dataclass(frozen=True)
+class Curve:
+    """One series of points: its name, where they stand along the level axis, their values, and its look."""
+
+    name: str
+    places: Area
+    values: Area
+    colour: str
+    dashed: bool = False
 
 
 def add_columns(
@@ -146,6 +172,50 @@ def add_bars(
     _place(sheet, chart, place)
 
 
+def add_curves(
+    sheet: Worksheet, place: Area, titles: tuple[str, str, str], curves: Sequence[Curve], *, step: float
+) -> None:
+    """Points joined by straight lines over a level axis of numbers.
+
+    Parameters
+    ----------
+    sheet, place
+        As in :func:`add_columns`.
+    titles : tuple of str
+        Of the chart, of the level and of the upright axis, these two with their units.
+    curves : sequence of Curve
+        A second one may be dashed, to be told apart in grey.
+    step : float
+        Between the figures of the level axis, which begins one step before zero.
+    """
+    chart = ScatterChart()
+    chart.scatterStyle = "lineMarker"
+    chart.varyColors = False
+    _frame(chart, titles[0], legend=len(curves) > 1)
+    chart.series = [_curve(sheet, curve, order) for order, curve in enumerate(curves)]
+    _axes(chart, titles[2], upright=True)
+    chart.x_axis.title = _title(titles[1], 9)
+    chart.x_axis.numFmt = NumFmt("0", sourceLinked=False)
+    chart.x_axis.majorGridlines = None
+    chart.x_axis.crosses = chart.y_axis.crosses = "min"
+    level = cast("NumericAxis", chart.x_axis)
+    level.scaling.min, level.majorUnit = -step, step
+    _place(sheet, chart, place)
+
+
+def _curve(sheet: Worksheet, curve: Curve, order: int) -> XYSeries:
+    series = XYSeries(idx=order, order=order)
+    series.tx = SeriesLabel(v=curve.name)
+    series.xVal = AxDataSource(numRef=_numbers(sheet, curve.places))
+    series.yVal = NumDataSource(numRef=_numbers(sheet, curve.values))
+    line = LineProperties(solidFill=curve.colour, w=22225, prstDash="dash" if curve.dashed else "solid")
+    series.graphicalProperties = GraphicalProperties(ln=line)
+    fill = GraphicalProperties(solidFill=curve.colour, ln=LineProperties(solidFill=curve.colour))
+    series.marker = Marker(symbol="square" if curve.dashed else "circle", size=5, spPr=fill)
+    series.smooth = False
+    return series
+
+
 def _label_values(chart: BarChart, digits: str) -> None:
     chart.dataLabels = DataLabelList(
         showVal=True, showSerName=False, showCatName=False, showLegendKey=False, showPercent=False, numFmt=digits
@@ -163,23 +233,28 @@ def _chart(
     chart = BarChart()
     chart.type = kind
     chart.varyColors = False
-    chart.roundedCorners = False
-    chart.title = _title(titles[0], 11, bold=True)
-    chart.graphical_properties = GraphicalProperties(noFill=True, ln=LineProperties(noFill=True))
+    _frame(chart, titles[0], legend=len(series) > 1)
     chart.series = [_series(sheet, categories, bars, order) for order, bars in enumerate(series)]
-    chart.legend = Legend(legendPos="b", overlay=False, txPr=_properties(9)) if len(series) > 1 else None
-    _axes(chart, titles[1])
+    _axes(chart, titles[1], upright=kind == "col")
     return chart
 
 
-def _place(sheet: Worksheet, chart: BarChart, place: Area) -> None:
+def _frame(chart: BarChart | ScatterChart, title: str, *, legend: bool) -> None:
+    """What all charts share: title, no border, the legend below if there is something to tell apart."""
+    chart.roundedCorners = False
+    chart.title = _title(title, 11, bold=True)
+    chart.graphical_properties = GraphicalProperties(noFill=True, ln=LineProperties(noFill=True))
+    chart.legend = Legend(legendPos="b", overlay=False, txPr=_properties(9)) if legend else None
+
+
+def _place(sheet: Worksheet, chart: BarChart | ScatterChart, place: Area) -> None:
     start = AnchorMarker(col=place.column - 1, row=place.row - 1)
     end = AnchorMarker(col=place.last_column, row=place.last_row)
     chart.anchor = cast("Any", TwoCellAnchor(editAs="twoCell", _from=start, to=end))
     sheet.add_chart(chart)
 
 
-def _axes(chart: BarChart, unit: str) -> None:
+def _axes(chart: BarChart | ScatterChart, unit: str, *, upright: bool) -> None:
     """Axes are told to be shown: without the word some programs hide them."""
     for axis in (chart.x_axis, chart.y_axis):
         axis.delete = False
@@ -188,7 +263,7 @@ def _axes(chart: BarChart, unit: str) -> None:
     chart.x_axis.tickLblPos = "low"
     chart.x_axis.numFmt = NumFmt("General", sourceLinked=False)
     chart.y_axis.numFmt = NumFmt("#,##0", sourceLinked=False)
-    chart.y_axis.title = _title(unit, 9, upright=chart.type == "col")
+    chart.y_axis.title = _title(unit, 9, upright=upright)
     chart.y_axis.majorGridlines = ChartLines(GraphicalProperties(ln=LineProperties(solidFill=RULE, w=6350)))
 
 

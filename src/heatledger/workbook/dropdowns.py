@@ -123,7 +123,7 @@ def _list(sheet: Worksheet, column: int, key: Key, source: Source | None, counte
 def _named(book: Workbook, key: Key, column: int) -> str:
     """Give the filled part of a list a name; validations refer to other sheets through names."""
     origin, words = key
-    parts = [origin, "compass" if words == COMPASS else " ".join(words).split(" ")[0]]
+    parts = [origin, "compass" if words == COMPASS else " ".join(word.split()[0] for word in words)]
     name = "_".join(["list", *(re.sub(r"\W+", "_", part.lower()) for part in parts if part)])
     letters = column_letters(column)
     area = f"OFFSET({LISTS}!${letters}${_TOP},0,0,MAX(1,{LISTS}!${letters}$2),1)"

@@ -5,19 +5,9 @@ from __future__ import annotations
 from openpyxl.worksheet.worksheet import Worksheet
 
 from heatledger.inputs.rows import SHEETS
-from heatledger.workbook.look import (
-    INPUT,
-    LINK,
-    OPTIONAL,
-    PURPOSE,
-    REQUIRED,
-    SECTION,
-    TITLE,
-    UNIT,
-    Canvas,
-    Style,
-    print_setup,
-)
+from heatledger.workbook.canvas import Canvas
+from heatledger.workbook.look import INPUT, LINK, OPTIONAL, PURPOSE, REQUIRED, SECTION, TITLE, UNIT, Style
+from heatledger.workbook.pages import print_setup
 
 __all__ = ["CAUTIONS", "TITLE_OF_GUIDE", "write_guide"]
 

@@ -175,6 +175,8 @@ def _elements(data: bytes) -> Iterator[tuple[int, int, Element]]:
     rows = etree.iterparse(BytesIO(data), tag=_ROW, resolve_entities=False, no_network=True)
     for _, line in rows:
         row = int(line.get("r") or row + 1)
+        if row < 1:
+            raise ValueError("a row before the first")
         column = 0
         for element in line:
             name = element.get("r")
@@ -189,9 +191,11 @@ def _elements(data: bytes) -> Iterator[tuple[int, int, Element]]:
 def _column(name: str) -> int:
     column = 0
     for letter in name:
-        if letter.isdigit():
+        if not "A" <= letter <= "Z":
             break
         column = column * 26 + ord(letter) - 64
+    if not column:
+        raise ValueError("a cell name without letters")
     return column
 
 

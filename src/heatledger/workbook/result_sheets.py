@@ -7,7 +7,7 @@ from collections.abc import Callable
 from openpyxl.worksheet.worksheet import Worksheet
 
 from heatledger.results import Results
-from heatledger.workbook.look import book_bytes, new_book
+from heatledger.workbook.pages import book_bytes, new_book
 from heatledger.workbook.sheet_balance import write_monthly_balance
 from heatledger.workbook.sheet_build_ups import write_build_ups
 from heatledger.workbook.sheet_losses import write_element_losses

@@ -7,10 +7,13 @@ from dataclasses import fields, replace
 import numpy as np
 from openpyxl.worksheet.worksheet import Worksheet
 
-from heatledger.results import ClimateResult, Months, Results, ZoneResult, label_of
+from heatledger.results import ClimateResult, GroundFloorResult, Months, Results, ZoneResult, label_of
+from heatledger.workbook.canvas import Canvas
 from heatledger.workbook.charts import BLUE, GREY, ORANGE, SKY, VERMILLION, YELLOW, Area, Bars, add_columns
-from heatledger.workbook.look import BODY, LINE, MONTHS, NUMBER, SECTION, Canvas, print_setup
+from heatledger.workbook.look import BODY, MONTHS, NUMBER, SECTION
+from heatledger.workbook.measure import LINE, digits_for
 from heatledger.workbook.monthly import conditioned, head, sum_of, year_mean
+from heatledger.workbook.pages import print_setup
 
 __all__ = ["write_monthly_balance"]
 
@@ -24,9 +27,19 @@ CHART_HEIGHT = 17
 FIRST_MONTH, YEAR = 2, 14
 
 GAINS = ("solar_gains", "internal_gains")
-HEATING = ("transmission_heating", "ventilation_heating", "gain_ratio", "gain_utilisation", "heating_need")
-COOLING = ("transmission_cooling", "ventilation_cooling", "loss_ratio", "loss_utilisation", "cooling_need")
+HEATING = (
+    *("transmission_heating", "ventilation_heating", "gain_ratio", "gain_utilisation", "heating_need"),
+    "heating_season",
+)
+COOLING = (
+    "solar_gains_cooling",
+    *("transmission_cooling", "ventilation_cooling", "loss_ratio", "loss_utilisation", "cooling_need"),
+    "cooling_season",
+)
+FANS = ("fan_electricity",)
 FACTS = (
+    "heating_use",
+    "cooling_use",
     "exponent",
     "time_constant",
     "heat_capacity",
@@ -42,6 +55,11 @@ UNCONDITIONED_FACTS = (
     "transmission_coefficient",
     "ventilation_coefficient",
 )
+GROUND = ("temperature", "heat_flow_heating", "heat_flow_cooling")
+GROUND_FACTS = (
+    *("area", "characteristic_dimension", "equivalent_thickness", "u_value", "coefficient"),
+    *("inside_periodic_coefficient", "outside_periodic_coefficient", "lag"),
+)
 
 
 def write_monthly_balance(sheet: Worksheet, results: Results) -> None:
@@ -55,6 +73,10 @@ def write_monthly_balance(sheet: Worksheet, results: Results) -> None:
         first = row
         row = _zone(canvas, first, zone, results) + 1
         blocks.append((first, row - 1))
+    for floor in results.ground_floors:
+        first = row
+        row = _ground_floor(canvas, first, floor) + 1
+        blocks.append((first, row - 1))
     canvas.keep_together(blocks, repeated=2 * LINE)
     sheet.freeze_panes = f"B{HEADER_ROW + 1}"
     print_setup(sheet, results.project.project, titles=f"{HEADER_ROW}:{HEADER_ROW}")
@@ -67,10 +89,6 @@ def _building(canvas: Canvas, row: int, results: Results) -> int:
     solar, internal = (sum_of(zones, field) for field in GAINS)
     transmission, ventilation = (sum_of(zones, field) for field in HEATING[:2])
     need = results.building.heating_need
-    # Whole kWh, so that the sum of a column is zero as printed, too.
-    solar, internal, transmission, ventilation, need = (
-        np.rint(months) for months in (solar, internal, transmission, ventilation, need)
-    )
     unused = -(solar + internal + need - transmission - ventilation)
     flows = (
         ("Heating need [kWh]", need, VERMILLION),
@@ -82,7 +100,7 @@ def _building(canvas: Canvas, row: int, results: Results) -> int:
     )
     first = row + 1
     for place, (title, months, _) in enumerate(flows):
-        _line(canvas, first + place, title, "kWh", months + 0.0)  # turns −0 into 0
+        _line(canvas, first + place, title, "kWh", months)
     series = [
         Bars(Area.across(first + place, 1, 1), Area.across(first + place, FIRST_MONTH, FIRST_MONTH + 11), colour)
         for place, (_, _, colour) in enumerate(flows)
@@ -108,39 +126,58 @@ def _zone(canvas: Canvas, row: int, zone: ZoneResult, results: Results) -> int:
     if zone.conditioning == "unconditioned":
         return _facts(canvas, _lines(canvas, row + 1, zone, UNCONDITIONED), zone, UNCONDITIONED_FACTS)
     row = _lines(canvas, row + 1, zone, GAINS)
-    for part in (HEATING, COOLING):
+    for part in (HEATING, COOLING, FANS):
         row = _lines(canvas, row, zone, part)
     return _facts(canvas, row, zone, FACTS)
+
+
+def _ground_floor(canvas: Canvas, row: int, floor: GroundFloorResult) -> int:
+    """One ground floor; gives the row below it."""
+    _section(canvas, row, f"{floor.name} · {floor.type} · {floor.zone}")
+    for place, name in enumerate(GROUND, start=row + 1):
+        _line(canvas, place, label_of(GroundFloorResult, name), _GROUND_UNITS[name], getattr(floor, name))
+    return _facts(canvas, row + 1 + len(GROUND), floor, GROUND_FACTS)
 
 
 def _lines(canvas: Canvas, row: int, zone: ZoneResult, names: tuple[str, ...]) -> int:
     for name in names:
         _line(
-            canvas, row, label_of(ZoneResult, name), _UNITS[name], getattr(zone, name), important=name.endswith("_need")
+            canvas,
+            row,
+            label_of(ZoneResult, name),
+            "months" if name.endswith("_season") else _UNITS[name],
+            getattr(zone, name),
+            important=name.endswith("_need"),
         )
         row += 1
     return row
 
 
-def _facts(canvas: Canvas, row: int, zone: ZoneResult, names: tuple[str, ...]) -> int:
+def _facts(canvas: Canvas, row: int, part: ZoneResult | GroundFloorResult, names: tuple[str, ...]) -> int:
     """Figures that hold for the whole year, in the first column of numbers."""
     for name in names:
-        canvas.put(row, 1, label_of(ZoneResult, name), BODY)
-        canvas.numbers(row, FIRST_MONTH, [getattr(zone, name)])
+        canvas.put(row, 1, label_of(type(part), name), BODY)
+        value = getattr(part, name)
+        if isinstance(value, str):
+            canvas.merged(row, FIRST_MONTH, FIRST_MONTH + 3, value, BODY)
+        else:
+            canvas.numbers(row, FIRST_MONTH, [value])
         canvas.height(row, 15)
         row += 1
     return row
 
 
 def _line(canvas: Canvas, row: int, title: str, unit: str, months: Months, *, important: bool = False) -> None:
-    """Twelve months and what the year makes of them: a sum of energies, a mean of temperatures."""
+    """Twelve months and what the year makes of them: a sum of energies and of shares of months, else a mean."""
     style = _NUMBER_BOLD if important else NUMBER
     canvas.put(row, 1, title, _BOLD if important else BODY)
-    digits = {"°C": "0.0", "-": "0.00"}.get(unit, "")
-    canvas.numbers(row, FIRST_MONTH, months, style, digits)
-    if unit in {"kWh", "°C"}:
-        year = float(np.sum(months)) if unit == "kWh" else year_mean(months)
-        canvas.numbers(row, YEAR, [year], style, digits)
+    digits = {"°C": "0.0", "-": "0.00", "months": "0.0"}.get(unit, "")
+    digits = digits or digits_for(months.tolist())
+    shown = np.where((months < 0) & (months > -0.5) & (unit in {"kWh", "W"}), 0.0, months)  # no "-0" in print
+    canvas.numbers(row, FIRST_MONTH, shown, style, digits)
+    if unit in {"kWh", "°C", "W", "months"}:
+        year = year_mean(months) if unit in {"°C", "W"} else float(np.sum(months))
+        canvas.numbers(row, YEAR, [year], style, "" if unit in {"kWh", "W"} else "0.0")
     else:
         canvas.put(row, YEAR, None, style)
     canvas.height(row, 15)
@@ -153,6 +190,7 @@ def _section(canvas: Canvas, row: int, text: str) -> None:
 
 
 _UNITS = {item.name: item.metadata["unit"] for item in fields(ZoneResult)}
+_GROUND_UNITS = {item.name: item.metadata["unit"] for item in fields(GroundFloorResult)}
 _HEADING = replace(SECTION, wrap=True)
 _BOLD = replace(BODY, bold=True)
 _NUMBER_BOLD = replace(NUMBER, bold=True)

@@ -2,20 +2,25 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from dataclasses import fields
 
 from openpyxl.worksheet.worksheet import Worksheet
 
 from heatledger.results import ElementLoss, Results, label_of
+from heatledger.workbook.canvas import Canvas
 from heatledger.workbook.charts import BLUE, Area, Bars, add_bars
-from heatledger.workbook.look import BODY, NUMBER, NUMBER_TOTAL, SMALL, TOTAL, Canvas, digits_for, print_setup
+from heatledger.workbook.look import BODY, NUMBER, NUMBER_TOTAL, SECTION, SMALL, TOTAL
+from heatledger.workbook.measure import DASH, digits_for
 from heatledger.workbook.monthly import head
+from heatledger.workbook.pages import print_setup
 
 __all__ = ["write_element_losses"]
 
 REMARK = (
     "What each element, opening, thermal bridge and air flow loses in the months in which its zone needs heating, "
-    "the largest first."
+    "the largest first. Negative: heat from a warmer space. Shares are of the sum of what leaves the conditioned "
+    "zones; what passes between two of them stands below the sum."
 )
 MOST_BARS = 15
 HEADER_ROW = 24
@@ -23,6 +28,7 @@ LABEL_COLUMN = 11
 """Names for the chart, outside the printed area."""
 _DIGITS = {"area": "#,##0.0", "u_value": "0.00", "coefficient": "#,##0.0", "share": "0.0"}
 _SUMMED = ("coefficient", "loss", "share")
+_COLUMNS = [item.name for item in fields(ElementLoss) if item.name != "between_zones"]
 
 
 def write_element_losses(sheet: Worksheet, results: Results) -> None:
@@ -30,43 +36,57 @@ def write_element_losses(sheet: Worksheet, results: Results) -> None:
     canvas = Canvas(sheet, (7, 32, 24, 15, 20, 10, 13, 13, 19, 11))
     head(canvas, results, sheet.title, REMARK)
     canvas.space(4, HEADER_ROW - 1)
-    names = [item.name for item in fields(ElementLoss)]
-    canvas.titles(HEADER_ROW, ("Rank", *(label_of(ElementLoss, name) for name in names)), text_columns=5)
+    canvas.titles(HEADER_ROW, ("Rank", *(label_of(ElementLoss, name) for name in _COLUMNS)), text_columns=5)
     canvas.put(HEADER_ROW, LABEL_COLUMN, "Name in the chart", SMALL)
-    losses = sorted(results.element_losses, key=lambda loss: -loss.loss)
-    digits = {**_DIGITS, "loss": digits_for(loss.loss for loss in losses)}
+    ranked = sorted(results.element_losses, key=lambda loss: -loss.loss)
+    losses = [loss for loss in ranked if not loss.between_zones]
+    digits = {**_DIGITS, "loss": digits_for(loss.loss for loss in ranked)}
     for rank, loss in enumerate(losses, start=1):
         _row(canvas, HEADER_ROW + rank, rank, loss, digits)
-    _total(canvas, HEADER_ROW + len(losses) + 1, results, digits)
+    last = HEADER_ROW + len(losses) + 1
+    _total(canvas, last, losses, digits)
+    last = _between_zones(canvas, last, [loss for loss in ranked if loss.between_zones], digits)
     if losses:
         _chart(sheet, min(len(losses), MOST_BARS))
     sheet.column_dimensions["K"].width = 30
-    sheet.print_area = f"A1:J{HEADER_ROW + len(losses) + 1}"
+    sheet.print_area = f"A1:J{last}"
     print_setup(sheet, results.project.project, titles=f"{HEADER_ROW}:{HEADER_ROW}")
 
 
-def _row(canvas: Canvas, row: int, rank: int, loss: ElementLoss, digits: dict[str, str]) -> None:
+def _between_zones(canvas: Canvas, last: int, losses: Sequence[ElementLoss], digits: dict[str, str]) -> int:
+    """Rows of what passes between conditioned zones, below the sum; gives the last row."""
+    if not losses:
+        return last
+    text = "Between conditioned zones: heat that the building does not lose"
+    canvas.merged(last + 2, 1, LABEL_COLUMN - 1, text, SECTION)
+    canvas.fit_merged(last + 2, 1, LABEL_COLUMN - 1, text, size=11, bold=True)
+    for row, loss in enumerate(losses, start=last + 3):
+        _row(canvas, row, None, loss, digits)
+    return last + 2 + len(losses)
+
+
+def _row(canvas: Canvas, row: int, rank: int | None, loss: ElementLoss, digits: dict[str, str]) -> None:
     canvas.put(row, 1, rank, BODY)
-    for place, item in enumerate(fields(ElementLoss), start=2):
-        value = getattr(loss, item.name)
-        is_text = isinstance(value, str)
-        canvas.put(row, place, value, BODY if is_text else NUMBER, digits.get(item.name, "General"))
-    label = f"{loss.name} · {loss.zone}"
-    canvas.put(row, LABEL_COLUMN, label if len(label) <= 48 else label[:47] + "…", SMALL)
+    for place, name in enumerate(_COLUMNS, start=2):
+        value = getattr(loss, name)
+        shown = DASH if loss.between_zones and name == "share" else value
+        canvas.put(row, place, shown, BODY if isinstance(value, str) else NUMBER, digits.get(name, "General"))
+    if rank is not None:
+        label = f"{loss.name} · {loss.zone}"
+        canvas.put(row, LABEL_COLUMN, label if len(label) <= 48 else label[:47] + "…", SMALL)
     canvas.fit(row, ("", loss.name, loss.zone, loss.kind, loss.faces))
 
 
-def _total(canvas: Canvas, row: int, results: Results, digits: dict[str, str]) -> None:
+def _total(canvas: Canvas, row: int, losses: Sequence[ElementLoss], digits: dict[str, str]) -> None:
     canvas.put(row, 1, None, TOTAL)
-    for place, item in enumerate(fields(ElementLoss), start=2):
-        summed = item.name in _SUMMED
-        value = sum(getattr(loss, item.name) for loss in results.element_losses) if summed else None
-        canvas.put(row, place, value, NUMBER_TOTAL, digits.get(item.name, "General"))
+    for place, name in enumerate(_COLUMNS, start=2):
+        value = sum(getattr(loss, name) for loss in losses) if name in _SUMMED else None
+        canvas.put(row, place, value, NUMBER_TOTAL, digits.get(name, "General"))
     canvas.put(row, 2, "Sum", TOTAL)
 
 
 def _chart(sheet: Worksheet, bars: int) -> None:
-    column = 2 + [item.name for item in fields(ElementLoss)].index("loss")
+    column = 2 + _COLUMNS.index("loss")
     names = Area.down(LABEL_COLUMN, HEADER_ROW + 1, HEADER_ROW + bars)
     values = Bars(Area.across(HEADER_ROW, column, column), Area.down(column, HEADER_ROW + 1, HEADER_ROW + bars), BLUE)
     titles = ("The largest losses in months with heating", "kWh a year")

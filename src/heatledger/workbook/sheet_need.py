@@ -9,20 +9,12 @@ import numpy as np
 from openpyxl.worksheet.worksheet import Worksheet
 
 from heatledger.results import BuildingResult, Months, Results, ZoneResult, label_of
+from heatledger.workbook.canvas import Canvas
 from heatledger.workbook.charts import SKY, VERMILLION, Area, Bars, add_bars, add_columns
-from heatledger.workbook.look import (
-    BODY,
-    LINE,
-    MONTHS,
-    NUMBER,
-    NUMBER_TOTAL,
-    SECTION,
-    TOTAL,
-    Canvas,
-    digits_for,
-    print_setup,
-)
+from heatledger.workbook.look import BODY, MONTHS, NUMBER, NUMBER_TOTAL, SECTION, TOTAL
+from heatledger.workbook.measure import LINE, digits_for
 from heatledger.workbook.monthly import conditioned, head
+from heatledger.workbook.pages import print_setup
 
 __all__ = ["write_monthly_need"]
 

@@ -7,8 +7,11 @@ from collections.abc import Sequence
 from openpyxl.worksheet.worksheet import Worksheet
 
 from heatledger.results import Note, NoteKind, Results
-from heatledger.workbook.look import BODY, LINE, LINK, SECTION, Canvas, print_setup
+from heatledger.workbook.canvas import Canvas
+from heatledger.workbook.look import BODY, LINK, SECTION
+from heatledger.workbook.measure import LINE
 from heatledger.workbook.monthly import head
+from heatledger.workbook.pages import print_setup
 
 __all__ = ["NOTES", "write_notes"]
 

@@ -9,6 +9,7 @@ import numpy as np
 from openpyxl.worksheet.worksheet import Worksheet
 
 from heatledger.results import BuildingResult, ClimateResult, ElementLoss, Months, ProjectResult, Results, label_of
+from heatledger.workbook.canvas import Canvas
 from heatledger.workbook.charts import BLUE, SKY, VERMILLION, Area, Bars, add_bars, add_columns
 from heatledger.workbook.guide import CAUTIONS
 from heatledger.workbook.look import (
@@ -23,12 +24,11 @@ from heatledger.workbook.look import (
     SECTION,
     SMALL,
     TOTAL,
-    Canvas,
     Style,
-    digits_for,
-    print_setup,
 )
-from heatledger.workbook.monthly import conditioned, months_of_need, sum_of
+from heatledger.workbook.measure import digits_for
+from heatledger.workbook.monthly import conditioned, months_of_need, shares_in_tenths, sum_of
+from heatledger.workbook.pages import print_setup
 from heatledger.workbook.sheet_notes import NOTES
 
 __all__ = ["LOSS_GROUPS", "write_summary"]
@@ -145,7 +145,7 @@ def _sentences(results: Results) -> tuple[str, str, str]:
 
 
 def _largest_loss(results: Results) -> str:
-    losses = results.element_losses
+    losses = [loss for loss in results.element_losses if not loss.between_zones]
     if not losses:
         return "Largest single loss: none, no zone is heated."
     top = max(losses, key=lambda loss: loss.loss)
@@ -168,7 +168,7 @@ def _driver_of_cooling(results: Results) -> str:
     zones = [zone for zone in conditioned(results) if np.nansum(zone.cooling_need) > 0]
     season = results.building.cooling_need > 0
     gains = {
-        "solar gains": float(np.sum(sum_of(zones, "solar_gains"), where=season)),
+        "solar gains": float(np.sum(sum_of(zones, "solar_gains_cooling"), where=season)),
         "internal gains": float(np.sum(sum_of(zones, "internal_gains"), where=season)),
     }
     total = sum(gains.values())
@@ -202,13 +202,17 @@ def _months(canvas: Canvas, row: int, building: BuildingResult) -> None:
 
 
 def _grouped(losses: Sequence[ElementLoss]) -> list[tuple[str, float, float]]:
-    """Title, loss [kWh] and share [%] of each kind of loss, always in the same order."""
-    sums = {title: [0.0, 0.0] for title in (*LOSS_GROUPS.values(), OTHER)}
+    """Title, loss [kWh] and share of the sum [%] of each kind of loss, always in the same order.
+
+    What passes between conditioned zones is left out. Shares are rounded so that they add up to 100 as printed.
+    """
+    sums = dict.fromkeys((*LOSS_GROUPS.values(), OTHER), 0.0)
     for loss in losses:
-        group = sums[LOSS_GROUPS.get(loss.kind, OTHER)]
-        group[0] += loss.loss
-        group[1] += loss.share
-    return [(title, *values) for title, values in sums.items() if title != OTHER or any(values)]  # type: ignore[misc]
+        if not loss.between_zones:
+            sums[LOSS_GROUPS.get(loss.kind, OTHER)] += loss.loss
+    shown = {title: loss for title, loss in sums.items() if title != OTHER or loss}
+    shares = shares_in_tenths(list(shown.values()))
+    return [(title, loss, share) for (title, loss), share in zip(shown.items(), shares, strict=True)]
 
 
 def _losses(canvas: Canvas, row: int, results: Results) -> None:

@@ -15,24 +15,12 @@ from openpyxl.worksheet.worksheet import Worksheet
 from heatledger.inputs.cells import column_letters, reference
 from heatledger.inputs.columns import Column, SheetRow
 from heatledger.inputs.rows import SHEETS, ProjectRow
+from heatledger.workbook.canvas import Canvas
 from heatledger.workbook.dropdowns import Key, Source, key_of, write_lists
 from heatledger.workbook.guide import TITLE_OF_GUIDE, write_guide
-from heatledger.workbook.look import (
-    HEAD,
-    INPUT,
-    LINE,
-    OPTIONAL,
-    PURPOSE,
-    REQUIRED,
-    SMALL,
-    TITLE,
-    UNIT,
-    Canvas,
-    book_bytes,
-    line_count,
-    new_book,
-    print_setup,
-)
+from heatledger.workbook.look import HEAD, INPUT, OPTIONAL, PURPOSE, REQUIRED, SMALL, TITLE, UNIT, Style
+from heatledger.workbook.measure import LINE, line_count
+from heatledger.workbook.pages import book_bytes, new_book, print_setup
 
 __all__ = ["build_template"]
 
@@ -42,6 +30,8 @@ UNITS_ROW, HEADER_ROW, FIRST_ROW = 4, 5, 6
 MOST_PROMPT, MOST_TITLE = 255, 32
 """Characters an input prompt and its title may have (ECMA-376 Part 1, 18.3.1.32)."""
 _SLIP = Font(bold=True, color="D55E00")
+_TEXT_INPUT = replace(INPUT, number_format="@")
+"""Kept as text, lest a spreadsheet program turns months such as 5-9 into a date."""
 _NUMBER_INPUT = replace(INPUT, horizontal="right", indent=1)
 _JUST = 1e-9
 """Validations know closed bounds only: an open bound is moved by less than anybody types."""
@@ -142,9 +132,14 @@ def _fill(canvas: Canvas, columns: Mapping[str, Column], rows: Sequence[Mapping[
     for row in range(FIRST_ROW, last + 1):
         given = rows[row - FIRST_ROW] if row - FIRST_ROW < len(rows) else {}
         for place, (field, column) in enumerate(columns.items(), start=1):
-            numeric = column.kind in {"number", "integer", "azimuth"}
-            canvas.put(row, place, given.get(field), _NUMBER_INPUT if numeric else INPUT)
+            canvas.put(row, place, given.get(field), _input_style(column))
         canvas.fit(row, [given.get(field) for field in columns])
+
+
+def _input_style(column: Column) -> Style:
+    if column.kind == "months":
+        return _TEXT_INPUT
+    return _NUMBER_INPUT if column.kind in {"number", "integer", "azimuth"} else INPUT
 
 
 def _heading(canvas: Canvas, title: str, purpose: str) -> None:
@@ -161,9 +156,11 @@ def _width(column: Column, first: bool) -> float:
         case "choice":
             return min(max(*(len(word) for word in column.choices), 9) + 4.0, 22.0)
         case "name":
-            return 22.0
+            return 24.0
+        case "months":
+            return 14.0
         case "text":
-            return 26.0 if first else 52.0
+            return 30.0 if first else 52.0
 
 
 def _story(column: Column) -> str:
@@ -223,7 +220,7 @@ def _validation(field: _Field) -> DataValidation:
             return _stopping(found, f"Sheet {column.names_from} has no such name yet. Keep it?")
         case "azimuth":  # the dropdown offers compass words; degrees may be typed as well
             return DataValidation(type="list", formula1=field.list, showErrorMessage=False)
-        case "text":
+        case "months" | "text":
             return DataValidation()
 
 
@@ -258,5 +255,5 @@ def _slip(field: _Field) -> str:
             )
         case "name":
             return f'AND({cell}<>"",ISNA(MATCH(TRIM({cell}),{field.list},0)))'
-        case "choice" | "text":
+        case "choice" | "months" | "text":
             return ""

@@ -1,0 +1,66 @@
+"""What a cell can hold and how much room it takes."""
+
+from __future__ import annotations
+
+import math
+import re
+import unicodedata
+from collections.abc import Iterable
+
+from openpyxl.cell.cell import ILLEGAL_CHARACTERS_RE
+
+__all__ = ["DASH", "LINE", "clean_text", "digits_for", "line_count"]
+
+DASH = "–"
+"""Shown for a number that does not exist."""
+LINE = 14.0
+"""Height of a text line of the body font. [pt]"""
+MOST_CHARACTERS = 32_767
+"""A cell holds no more, in any spreadsheet program."""
+_LOOKS_ESCAPED = re.compile("_(?=x[0-9A-Fa-f]{4}_)")
+
+
+def clean_text(text: str) -> str:
+    """Text as a cell can hold it: without control characters, not over-long.
+
+    >>> clean_text("one" + chr(7) + " two")
+    'one two'
+    """
+    plain = ILLEGAL_CHARACTERS_RE.sub("", text).encode("utf-8", "ignore").decode("utf-8")
+    plain = _LOOKS_ESCAPED.sub("_x005F_", plain)
+    return plain if len(plain) <= MOST_CHARACTERS else plain[: MOST_CHARACTERS - 1] + "…"
+
+
+def digits_for(values: Iterable[float | None]) -> str:
+    """Number format by the size of the largest value; zero shows as a dash.
+
+    >>> digits_for([12000.0, 3.0]), digits_for([0.25])
+    ('#,##0;-#,##0;"–"', '0.00;-0.00;"–"')
+    """
+    sizes = [abs(value) for value in values if value is not None and math.isfinite(value)]
+    largest = max(sizes, default=0.0)
+    digits = "#,##0" if largest >= 100 else "0.0" if largest >= 10 else "0.00"
+    return f'{digits};-{digits};"{DASH}"'
+
+
+def text_width(text: str) -> float:
+    """Width of a text in column units; East Asian signs count double."""
+    return sum(1.9 if unicodedata.east_asian_width(sign) in "WF" else 1.0 for sign in text)
+
+
+def line_count(text: str, width: float, size: float = 10, bold: bool = False) -> int:
+    """Lines a text takes in a column of a width, counted on the safe side."""
+    room = max((width - 1) * 10 / size * (1.0 if bold else 1.1), 1)
+    return sum(_wrapped(line, room) for line in text.split("\n"))
+
+
+def _wrapped(line: str, room: float) -> int:
+    lines, used = 1, 0.0
+    for word in line.split(" "):
+        width = text_width(word)
+        if used and used + 1 + width > room:
+            lines, used = lines + 1, 0.0
+        used += width + (1 if used else 0)
+        while used > room:
+            lines, used = lines + 1, used - room
+    return lines
