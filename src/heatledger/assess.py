@@ -95,7 +95,7 @@ def _read(path: str | Path, weather_check: Callable[[Rows], tuple[Problem, ...]]
 def _open_weather(rows: Rows, folder: Path) -> tuple[Climate, ...]:
     """The climate that sheet Project names; none if it is a monthly table with gaps, which are told elsewhere."""
     from heatledger.climate.files import open_climate  # noqa: PLC0415
-    from heatledger.inputs.monthlyclimate import uses_monthly_table  # noqa: PLC0415
+    from heatledger.inputs.rules_monthly_climate import uses_monthly_table  # noqa: PLC0415
 
     project = rows.project
     if uses_monthly_table(rows):

@@ -16,7 +16,7 @@ from hypothesis import strategies as st
 
 from heatledger.balance.calculate import calculate
 from heatledger.building.model import Building
-from heatledger.inputs.groundfloors import SOIL_CONDUCTIVITIES
+from heatledger.inputs.rules_ground_floors import SOIL_CONDUCTIVITIES
 from heatledger.results import GroundFloorResult, Note, Results
 from heatledger.standards.iso13370 import SOILS
 from heatledger.standards.iso13370_monthly import PeriodicCoefficients, monthly_heat_flow

@@ -5,9 +5,8 @@ from __future__ import annotations
 from collections.abc import Callable, Iterator
 from dataclasses import dataclass
 
-from heatledger.inputs import buildups, glazedunits, shading
+from heatledger.inputs import rules_build_ups, rules_glazed_units, rules_shading
 from heatledger.inputs.columns import SheetRow, plain
-from heatledger.inputs.groundfloors import uses
 from heatledger.inputs.rows import (
     OUTDOORS,
     SHEETS,
@@ -24,6 +23,7 @@ from heatledger.inputs.rows import (
     UsageRow,
     ZoneRow,
 )
+from heatledger.inputs.rules_ground_floors import uses
 from heatledger.inputs.wording import folded
 
 __all__ = ["DefaultUsed", "defaults_that_count"]
@@ -105,11 +105,11 @@ def _counts(row: SheetRow, field: str) -> bool:
         case UsageRow():
             return field in _USAGE_FIELDS and _USAGE_FIELDS[field](row)
         case BuildUpRow():
-            return buildups.uses(row, field)
+            return rules_build_ups.uses(row, field)
         case GlazedUnitRow():
-            return glazedunits.uses(row, field)
+            return rules_glazed_units.uses(row, field)
         case ObstructionRow() | ShadingDeviceRow():
-            return shading.uses(row, field)
+            return rules_shading.uses(row, field)
         case OpeningRow():
             return False
     return True

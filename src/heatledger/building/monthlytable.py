@@ -4,8 +4,8 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
-from heatledger.inputs.monthlyclimate import uses_monthly_table
 from heatledger.inputs.rows import MONTHS, Rows
+from heatledger.inputs.rules_monthly_climate import uses_monthly_table
 
 __all__ = ["MonthlyTable", "monthly_table"]
 

@@ -7,15 +7,15 @@ from collections.abc import Callable, Iterator
 from typing import TypeAlias
 
 from heatledger.errors import Problem
-from heatledger.inputs.buildups import layers_together
 from heatledger.inputs.checking import problem_at
 from heatledger.inputs.columns import plain
-from heatledger.inputs.glazedunits import frame_in_opening
-from heatledger.inputs.monthlyclimate import monthly_climate_problems
 from heatledger.inputs.names import Typed
 from heatledger.inputs.rowchecks import crossed_set_points, default_tilt, is_level
 from heatledger.inputs.rows import NEIGHBOUR, OUTDOORS, BuildUpRow, Rows, ThermalBridgeRow, UsageRow, ZoneRow
-from heatledger.inputs.shading import in_the_sun
+from heatledger.inputs.rules_build_ups import layers_together
+from heatledger.inputs.rules_glazed_units import frame_in_opening
+from heatledger.inputs.rules_monthly_climate import monthly_climate_problems
+from heatledger.inputs.rules_shading import in_the_sun
 from heatledger.inputs.wording import folded, nearest
 
 __all__ = ["cross_check", "default_tilt", "folded", "is_level"]

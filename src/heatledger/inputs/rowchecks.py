@@ -6,11 +6,8 @@ from collections.abc import Callable, Iterator
 from typing import Any, TypeAlias
 
 from heatledger.errors import Problem
-from heatledger.inputs.buildups import BUILD_UP_RULES
 from heatledger.inputs.checking import Checked, problem_at
 from heatledger.inputs.columns import SheetRow, plain
-from heatledger.inputs.glazedunits import GLAZED_UNIT_RULES
-from heatledger.inputs.groundfloors import GROUND_FLOOR_RULES
 from heatledger.inputs.rows import (
     NEIGHBOUR,
     OUTDOORS,
@@ -24,7 +21,10 @@ from heatledger.inputs.rows import (
     UsageRow,
     ZoneRow,
 )
-from heatledger.inputs.shading import SHADING_RULES
+from heatledger.inputs.rules_build_ups import BUILD_UP_RULES
+from heatledger.inputs.rules_glazed_units import GLAZED_UNIT_RULES
+from heatledger.inputs.rules_ground_floors import GROUND_FLOOR_RULES
+from heatledger.inputs.rules_shading import SHADING_RULES
 from heatledger.inputs.wording import folded
 
 __all__ = ["check_row", "crossed_set_points", "default_tilt", "is_level"]

@@ -5,10 +5,9 @@ from __future__ import annotations
 from typing import Any, ClassVar, Literal, TypeAlias
 
 from heatledger.inputs.columns import SheetRow, choice, months, number, text
+from heatledger.inputs.words import YesNo
 
 __all__ = ["ObstructionRow", "ShadingDeviceRow"]
-
-YesNo: TypeAlias = Literal["yes", "no"]
 
 Device: TypeAlias = Literal[
     "white venetian blind 5 %",
