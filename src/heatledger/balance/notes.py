@@ -226,4 +226,8 @@ def _methods(building: Building, openings: Sequence[OpeningGains]) -> Iterator[N
 def _sources(building: Building, climate: Climate) -> Iterator[Note]:
     cell = building.project.origin.cell("weather")
     yield Note("source", f"Weather: {climate.name}. {climate.source}", "Project", cell)
+    usages = {zone.usage.name: zone.usage for zone in building.zones if zone.usage}
+    for usage in usages.values():
+        whose = "standard profile, ISO 13790:2008, table G.12 (from memory)" if usage.standard else "own values"
+        yield Note("source", f"Usage {usage.name}: {whose}.", usage.origin.sheet, usage.origin.cell())
     yield from material_sources(building)

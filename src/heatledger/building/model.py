@@ -16,6 +16,7 @@ from heatledger.inputs.rows import (
     OpeningRow,
     ProjectRow,
     ThermalBridgeRow,
+    UsageRow,
     ZoneRow,
 )
 
@@ -320,6 +321,9 @@ class Usage:
     """While present. [m³/h]"""
     air_per_area: float
     """[m³/(h·m²)]"""
+    standard: bool
+    """Whether it is one of the shipped standard profiles, unchanged."""
+    origin: UsageRow
 
     @property
     def internal_gains(self) -> float:

@@ -25,6 +25,7 @@ from heatledger.building.model import (
 from heatledger.building.monthlytable import MonthlyTable, monthly_table
 from heatledger.building.shading import Obstruction, ShadingDevice, resolve_obstruction, resolve_shading_device
 from heatledger.inputs.crosschecks import default_tilt, folded, is_level
+from heatledger.inputs.prefilled import shipped_usages
 from heatledger.inputs.rows import NEIGHBOUR, OUTDOORS
 
 if TYPE_CHECKING:
@@ -130,7 +131,14 @@ def _usage(row: UsageRow) -> Usage:
         electricity * 1000 / HOURS_OF_YEAR,
         row.air_per_person,
         row.air_per_area,
+        _is_standard(row),
+        row,
     )
+
+
+def _is_standard(row: UsageRow) -> bool:
+    shipped = shipped_usages().get(folded(row.name))
+    return shipped is not None and shipped.model_dump(exclude={"name"}) == row.model_dump(exclude={"name"})
 
 
 def _air_system(row: AirSystemRow) -> AirSystem:

@@ -10,6 +10,7 @@ from heatledger.errors import Problem
 from heatledger.inputs.checking import problem_at
 from heatledger.inputs.columns import plain
 from heatledger.inputs.names import Typed
+from heatledger.inputs.prefilled import shipped_materials
 from heatledger.inputs.rowchecks import crossed_set_points, default_tilt, is_level
 from heatledger.inputs.rows import NEIGHBOUR, OUTDOORS, BuildUpRow, Rows, ThermalBridgeRow, UsageRow, ZoneRow
 from heatledger.inputs.rules_build_ups import layers_together
@@ -19,6 +20,11 @@ from heatledger.inputs.rules_shading import in_the_sun
 from heatledger.inputs.wording import folded, nearest
 
 __all__ = ["cross_check", "default_tilt", "folded", "is_level"]
+
+THINNEST = 1.0
+"""[mm]"""
+LIGHTEST_SHEET = 800.0
+"""Sheets and foils thinner than a millimetre are denser. [kg/m³]"""
 
 Check: TypeAlias = Callable[[Rows, Typed], Iterator[Problem]]
 
@@ -41,6 +47,7 @@ def cross_check(rows: Rows, typed: Typed) -> list[Problem]:
         _zones,
         _zone_set_points,
         _layers,
+        _thin_layers,
         _opening_areas,
         _frames,
         in_the_sun,
@@ -74,6 +81,15 @@ def _zone_set_points(rows: Rows, typed: Typed) -> Iterator[Problem]:
         if own and heating is not None and cooling is not None:
             field = "heating_set_point" if zone.cooling_set_point is None else "cooling_set_point"
             yield from crossed_set_points(zone, field, heating, cooling)
+        if usage is not None and usage.setback is not None and zone.heating_set_point is not None:
+            yield from _below_setback(zone, zone.heating_set_point, usage.setback)
+
+
+def _below_setback(zone: ZoneRow, heating: float, setback: float) -> Iterator[Problem]:
+    if heating < setback:
+        found = f"{plain(heating)} °C with a setback temperature of {plain(setback)} °C in its usage"
+        fix = "Correct one of the two temperatures, or give the zone another usage."
+        yield problem_at(zone, "heating_set_point", found, "a set-point not below the setback", fix)
 
 
 def _set_points(zone: ZoneRow, usage: UsageRow | None) -> tuple[float | None, float | None]:
@@ -97,6 +113,18 @@ def _layers(rows: Rows, typed: Typed) -> Iterator[Problem]:
             in_order = sorted(layers, key=lambda layer: layer.layer)
             yield from _numbering(in_order)
             yield from layers_together(in_order)
+
+
+def _thin_layers(rows: Rows, typed: Typed) -> Iterator[Problem]:
+    """Less than a millimetre of what is neither sheet nor foil was typed in metres."""
+    materials = {**shipped_materials(), **{folded(row.name): row for row in rows.materials}}
+    for layer in rows.build_ups:
+        material = materials.get(folded(layer.material))
+        bulky = material is not None and material.density is not None and material.density < LIGHTEST_SHEET
+        if bulky and layer.thickness < THINNEST:
+            found = f"{plain(layer.thickness)} mm of '{layer.material}'"
+            fix = f"Type {plain(1000 * layer.thickness)} if {plain(layer.thickness)} m is meant."
+            yield problem_at(layer, "thickness", found, "a thickness in millimetres", fix)
 
 
 def _numbering(layers: list[BuildUpRow]) -> Iterator[Problem]:

@@ -12,7 +12,7 @@ from heatledger.inputs.columns import Column, SheetRow
 from heatledger.inputs.rows import MONTHS, SHEETS, MaterialRow, MonthlyClimateRow, UsageRow
 from heatledger.inputs.wording import folded
 
-__all__ = ["Values", "blank_values", "example_values", "shipped_materials"]
+__all__ = ["Values", "blank_values", "example_values", "shipped_materials", "shipped_usages"]
 
 Values: TypeAlias = dict[str, list[dict[str, object]]]
 """Filled cells by sheet name: rows as field name and value."""
@@ -47,6 +47,17 @@ def shipped_materials() -> Mapping[str, MaterialRow]:
     1.65
     """
     rows = (MaterialRow.model_validate(row) for row in _rows(MaterialRow, "materials.csv"))
+    return {folded(row.name): row for row in rows}
+
+
+@cache
+def shipped_usages() -> Mapping[str, UsageRow]:
+    """The standard profiles by folded name, to tell them from the user's own.
+
+    >>> shipped_usages()["office"].appliances
+    20.0
+    """
+    rows = (UsageRow.model_validate(row) for row in _rows(UsageRow, "usage.csv"))
     return {folded(row.name): row for row in rows}
 
 

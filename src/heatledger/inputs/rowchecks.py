@@ -16,6 +16,7 @@ from heatledger.inputs.rows import (
     ElementRow,
     GlazedUnitRow,
     GroundFloorRow,
+    MaterialRow,
     ProjectRow,
     ThermalBridgeRow,
     UsageRow,
@@ -29,6 +30,10 @@ from heatledger.inputs.wording import folded
 
 __all__ = ["check_row", "crossed_set_points", "default_tilt", "is_level"]
 
+LIGHT = 300.0
+"""A material below it is no masonry, timber or metal. [kg/m³]"""
+MOST_OF_LIGHT = 1.0
+"""More than any light material conducts. [W/(m·K)]"""
 HOURS_OF_DAY = 24.0
 DAYS_OF_WEEK = 7.0
 
@@ -76,6 +81,16 @@ def _zone_usage(zone: ZoneRow) -> Iterator[Problem]:
 
 def _usage_set_points(usage: UsageRow) -> Iterator[Problem]:
     return crossed_set_points(usage, "cooling_set_point", usage.heating_set_point, usage.cooling_set_point)
+
+
+def _conductivity(material: MaterialRow) -> Iterator[Problem]:
+    """A light material conducts little: 40 for 0.040 is milliwatts."""
+    light = material.density is not None and material.density < LIGHT
+    if light and material.conductivity > MOST_OF_LIGHT:
+        found = f"{plain(material.conductivity)} for a density of {plain(material.density or 0)} kg/m³"
+        expected = f"at most {plain(MOST_OF_LIGHT)} for a material below {plain(LIGHT)} kg/m³"
+        fix = f"Type {plain(material.conductivity / 1000)} if mW/(m·K) were meant, or correct the density."
+        yield problem_at(material, "conductivity", found, expected, fix)
 
 
 def _setback(usage: UsageRow) -> Iterator[Problem]:
@@ -184,6 +199,7 @@ _RULES: tuple[Rule, ...] = (
     (ZoneRow, frozenset({"name"}), _zone_name),
     (ZoneRow, frozenset({"conditioning", "usage"}), _zone_usage),
     (UsageRow, frozenset({"heating_set_point", "cooling_set_point"}), _usage_set_points),
+    (MaterialRow, frozenset({"conductivity", "density"}), _conductivity),
     (
         UsageRow,
         frozenset({"heating_set_point", "setback", "heated_hours", "days_in_use", "months_out_of_use"}),

@@ -128,6 +128,10 @@ _SLIPS: dict[str, tuple[tuple[float, str], ...]] = {
 """What a value is divided by if it was typed in another unit, by the unit of the column."""
 
 
+SHORTEST_IN_MILLIMETRES = 400.0
+"""Openings and edges shorter than this were rather typed in centimetres. [mm]"""
+
+
 def unit_slip(value: float, column: Column) -> str:
     """Mend for a value out of bounds that was typed in another unit; empty if none explains it.
 
@@ -137,6 +141,8 @@ def unit_slip(value: float, column: Column) -> str:
     if column.unit == "°C" and _within((value - 32) / 1.8, column):
         return f"Type {(value - 32) / 1.8:.1f} if {plain(value)} °F is meant."
     for divisor, unit in _SLIPS.get(column.unit, ()):
+        if unit == "mm" and value < SHORTEST_IN_MILLIMETRES:
+            continue
         if _within(value / divisor, column):
             return f"Type {plain(value / divisor)} if {plain(value)} {unit} is meant."
     return ""

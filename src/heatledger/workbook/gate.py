@@ -8,12 +8,13 @@ import zlib
 from collections.abc import Iterator
 from contextlib import contextmanager
 from pathlib import Path
+from xml.parsers.expat import ExpatError
 from zipfile import BadZipFile, ZipFile
 
 from lxml import etree
 
 from heatledger.errors import InputError, Problem
-from heatledger.workbook.package import MAIN, TYPES_PART, Package
+from heatledger.workbook.package import MAIN, TYPES_PART, Package, PartTooLargeError
 
 __all__ = ["check_package", "read_package", "readable"]
 
@@ -25,7 +26,7 @@ SAVE_AS = "Open it in your spreadsheet program and save it as .xlsx."
 SAVE_AGAIN = "Open the file in your spreadsheet program, save it again, and try once more."
 _OLD_OFFICE = b"\xd0\xcf\x11\xe0"
 _BROKEN_ZIP = (BadZipFile, zlib.error, EOFError, struct.error, ValueError, OverflowError, NotImplementedError)
-_BROKEN_XML = (etree.LxmlError, LookupError, ValueError, TypeError, AttributeError)
+_BROKEN_XML = (etree.LxmlError, ExpatError, LookupError, ValueError, TypeError, AttributeError)
 _DOCTYPE = re.compile(rb"(?>\s+|<\?.*?\?>|<!--.*?-->)*+<!DOCTYPE", re.DOTALL)
 _BYTE_ORDER_MARKS = b"\xef\xbb\xbf\xff\xfe\0"
 
@@ -57,6 +58,11 @@ def readable(path: Path, sheet: str = "") -> Iterator[None]:
     """Turn whatever a broken part causes into a problem of the file."""
     try:
         yield
+    except PartTooLargeError as error:
+        fix = "Clear the formats of empty rows and columns, or copy the input sheets into a new workbook."
+        found = f"a part that is too large ({error})"
+        problem = Problem(found, "a workbook of usual size", fix, sheet=sheet, file=path.name)
+        raise InputError([problem]) from error
     except _BROKEN_XML as error:
         found = f"a part that cannot be read ({type(error).__name__})"
         problem = Problem(found, "a sound workbook", SAVE_AGAIN, sheet=sheet, file=path.name)

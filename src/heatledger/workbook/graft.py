@@ -7,6 +7,7 @@ Sheets of ours carry a hidden workbook-level name and are replaced in their plac
 from __future__ import annotations
 
 import posixpath
+import re
 import warnings
 from collections.abc import Collection, Iterable
 from dataclasses import dataclass, replace
@@ -28,6 +29,8 @@ from heatledger.workbook.styles import EMPTY_STYLES, StyleMerger
 
 __all__ = ["GraftReport", "graft"]
 
+_CHAINED_SHEET = re.compile(rb"""\si=["'](\d+)""")
+"""Number of a sheet in the list of formulas, which may hold a million entries."""
 _STYLES_TYPE = "application/vnd.openxmlformats-officedocument.spreadsheetml.styles+xml"
 
 
@@ -129,8 +132,8 @@ def _forget(package: Package, index: Index, entries: Collection[SheetEntry]) -> 
         return
     package.remove(_reachable(package, sheets) - _reachable(package, {""}, barred=sheets))
     chain = package.related(package.workbook, "calcChain")
-    ids = {entry.element.get("sheetId") for entry in entries}
-    if chain and any(cell.get("i") in ids for cell in package.xml(chain)):
+    ids = {(entry.element.get("sheetId") or "").encode() for entry in entries}
+    if chain and not ids.isdisjoint(_CHAINED_SHEET.findall(package.parts[chain])):
         index.unrelate("calcChain")  # a cell listed there has to exist; the list is rebuilt on opening
         package.remove({chain})
 

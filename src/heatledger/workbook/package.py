@@ -18,6 +18,7 @@ __all__ = [
     "TYPES_PART",
     "Element",
     "Package",
+    "PartTooLargeError",
     "Relation",
     "SheetEntry",
     "dump",
@@ -36,6 +37,14 @@ RELATIONS = "http://schemas.openxmlformats.org/package/2006/relationships"
 TYPES = "http://schemas.openxmlformats.org/package/2006/content-types"
 TYPES_PART = "[Content_Types].xml"
 FIXED_TIME = (1980, 1, 1, 0, 0, 0)
+MOST_MARKS = 2_000_000
+"""Tags and attributes of a part that is held as a tree; each takes up to 300 bytes of memory."""
+MOST_MARKS_OF_TYPES = 100_000
+"""The same for the content types, which are parsed again and again: there is about one for each part."""
+
+
+class PartTooLargeError(ValueError):
+    """A part that would take too much memory."""
 
 
 class Relation(NamedTuple):
@@ -62,8 +71,9 @@ def main(tag: str) -> str:
 
 
 def parse(data: bytes) -> Element:
-    """Root of an XML part; entities are never expanded, nothing is fetched."""
-    return etree.fromstring(data, etree.XMLParser(resolve_entities=False, no_network=True))
+    """Root of an XML part, without comments; entities are never expanded, nothing is fetched."""
+    parser = etree.XMLParser(resolve_entities=False, no_network=True, remove_comments=True, remove_pis=True)
+    return etree.fromstring(data, parser)
 
 
 def required(element: Element, key: str) -> str:
@@ -120,8 +130,11 @@ class Package:
         return self._names.get(part.lower(), part)
 
     def xml(self, part: str) -> Element:
-        """Root of an XML part."""
-        return parse(self.parts[part])
+        """Root of an XML part that is small enough for it."""
+        data = self.parts[part]
+        if data.count(b"<") + data.count(b"=") > (MOST_MARKS_OF_TYPES if part == TYPES_PART else MOST_MARKS):
+            raise PartTooLargeError(part)
+        return parse(data)
 
     def relations_part(self, part: str) -> str:
         """Name of the part that holds a part's relations."""

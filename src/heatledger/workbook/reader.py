@@ -3,19 +3,17 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Callable, Collection, Iterator
+from collections.abc import Callable, Collection
 from dataclasses import dataclass
 from datetime import datetime, timedelta
-from io import BytesIO
 from pathlib import Path
-
-from lxml import etree
 
 from heatledger.errors import InputError, Problem
 from heatledger.inputs.cells import Cell, Cells, reference
 from heatledger.workbook.gate import read_package, readable
-from heatledger.workbook.package import Element, Package, SheetEntry, main, required
+from heatledger.workbook.package import Package, SheetEntry, main, required
 from heatledger.workbook.references import global_markers
+from heatledger.workbook.stream import Budget, StoredCell, hear_cells, hear_strings, unescaped
 
 __all__ = ["owned_sheets", "read_cells"]
 
@@ -23,10 +21,9 @@ MOST_ROWS = 20_000
 MOST_COLUMNS = 500
 MOST_CELLS = 2_000_000
 
-_ROW, _VALUE, _FORMULA, _INLINE = main("row"), main("v"), main("f"), main("is")
-_TEXT, _RUN = main("t"), main("r")
-_ESCAPED = re.compile("_x([0-9A-Fa-f]{4})_")
 _NOT_A_DATE_PART = re.compile(r'"[^"]*"|\\.|_.|\*.|\[[^\]]*\]')
+_LONGEST_FORMAT = 255
+"""Letters that spreadsheet programs allow in a number format."""
 _DATE_FORMATS = {*range(14, 23), *range(27, 37), *range(45, 48), *range(50, 59)}
 """Built-in number formats that show dates or times (ECMA-376 Part 1, 18.8.30)."""
 
@@ -59,7 +56,8 @@ def read_cells(path: Path, wanted: Collection[str] | None = None) -> dict[str, C
     """
     package = read_package(path)
     with readable(path):
-        book = _Book(_strings(package), *_dates(package))
+        budget = Budget()
+        book = _Book(budget, _strings(package, budget), *_dates(package))
         entries = _user_sheets(package)
     only = None if wanted is None else {_folded(title) for title in wanted}
     sheets: dict[str, Cells] = {entry.title: {} for entry in entries}
@@ -91,6 +89,7 @@ def _user_sheets(package: Package) -> list[SheetEntry]:
 class _Book:
     """What the cells of all sheets refer to."""
 
+    budget: Budget
     strings: list[str]
     is_date: list[bool]
     start: datetime
@@ -100,9 +99,9 @@ def _owned(package: Package) -> frozenset[str]:
     return frozenset(title for _, title in global_markers(package.xml(package.workbook)))
 
 
-def _strings(package: Package) -> list[str]:
+def _strings(package: Package, budget: Budget) -> list[str]:
     part = package.related(package.workbook, "sharedStrings")
-    return [_plain(item) for item in package.xml(part)] if part else []
+    return hear_strings(package.parts[part], budget) if part else []
 
 
 def _dates(package: Package) -> tuple[list[bool], datetime]:
@@ -122,40 +121,23 @@ def _dates(package: Package) -> tuple[list[bool], datetime]:
 def _shows_date(number: int, code: str | None) -> bool:
     if code is None:
         return number in _DATE_FORMATS
-    bare = _NOT_A_DATE_PART.sub("", code).split(";")[0].lower()
+    bare = _NOT_A_DATE_PART.sub("", code[:_LONGEST_FORMAT]).split(";")[0].lower()
     return bare != "general" and any(letter in bare for letter in "ymdhs")
-
-
-def _plain(item: Element) -> str:
-    """Text of a string item: its runs joined, without the reading aids of East Asian text."""
-    texts = [item.text for item in _text_elements(item)]
-    return _unescaped("".join(text for text in texts if text))
-
-
-def _text_elements(item: Element) -> Iterator[Element]:
-    for child in item:
-        if child.tag == _TEXT:
-            yield child
-        elif child.tag == _RUN:
-            yield from child.iterfind(_TEXT)
-
-
-def _unescaped(text: str) -> str:
-    if "_x" not in text:
-        return text
-    return _ESCAPED.sub(lambda match: chr(int(match[1], 16)), text)
 
 
 def _sheet(path: Path, package: Package, entry: SheetEntry, book: _Book, room: int) -> Cells:
     cells: dict[tuple[int, int], Cell] = {}
+
+    def keep(row: int, column: int, stored: StoredCell) -> None:
+        cell = _cell(stored, book)
+        if cell is None:
+            return
+        if row > MOST_ROWS or column > MOST_COLUMNS or len(cells) >= room:
+            raise InputError([_too_much(path, entry.title, row, column)])
+        cells[row, column] = cell
+
     with readable(path, entry.title):
-        for row, column, element in _elements(package.parts[entry.part]):
-            cell = _cell(element, book)
-            if cell is None:
-                continue
-            if row > MOST_ROWS or column > MOST_COLUMNS or len(cells) >= room:
-                raise InputError([_too_much(path, entry.title, row, column)])
-            cells[row, column] = cell
+        hear_cells(package.parts[entry.part], book.budget, keep)
     return cells
 
 
@@ -169,48 +151,11 @@ def _too_much(path: Path, sheet: str, row: int, column: int) -> Problem:
     return Problem(found, limit, fix, sheet=sheet, cell=reference(row, column), file=path.name)
 
 
-def _elements(data: bytes) -> Iterator[tuple[int, int, Element]]:
-    """Row, column and element of every cell; rows are forgotten once read."""
-    row = 0
-    rows = etree.iterparse(BytesIO(data), tag=_ROW, resolve_entities=False, no_network=True)
-    for _, line in rows:
-        row = int(line.get("r") or row + 1)
-        if row < 1:
-            raise ValueError("a row before the first")
-        column = 0
-        for element in line:
-            name = element.get("r")
-            column = _column(name) if name else column + 1
-            yield row, column, element
-        line.clear()
-        parent = line.getparent()
-        while parent is not None and line.getprevious() is not None:
-            del parent[0]
-
-
-def _column(name: str) -> int:
-    column = 0
-    for letter in name:
-        if not "A" <= letter <= "Z":
-            break
-        column = column * 26 + ord(letter) - 64
-    if not column:
-        raise ValueError("a cell name without letters")
-    return column
-
-
-def _cell(element: Element, book: _Book) -> Cell | None:
-    text, formula = None, False
-    for child in element:
-        if child.tag == _VALUE:
-            text = child.text or ""
-        elif child.tag == _FORMULA:
-            formula = True
-        elif child.tag == _INLINE:
-            text = _plain(child)
-    kind = element.get("t", "n")
+def _cell(stored: StoredCell, book: _Book) -> Cell | None:
+    attributes, text, formula = stored
+    kind = attributes.get("t", "n")
     if text:
-        return _DECODE[kind](text, int(element.get("s", "0")), book)
+        return _DECODE[kind](text, int(attributes.get("s", "0")), book)
     if formula and (text is None or kind != "str"):
         return Cell(None, "uncalculated")
     return None
@@ -242,7 +187,7 @@ def _moment(serial: float, start: datetime) -> str:
 
 
 def _text(text: str, style: int, book: _Book) -> Cell | None:
-    return Cell(_unescaped(text), "text") if text.strip() else None
+    return Cell(unescaped(text), "text") if text.strip() else None
 
 
 def _shared_text(text: str, style: int, book: _Book) -> Cell | None:

@@ -6,7 +6,7 @@ from copy import deepcopy
 
 from lxml import etree
 
-from heatledger.workbook.package import MAIN, Element, main, parse, required
+from heatledger.workbook.package import MAIN, Element, PartTooLargeError, main, parse, required
 
 __all__ = ["EMPTY_STYLES", "StyleMerger", "section"]
 
@@ -24,6 +24,8 @@ _ORDER = (
     *("numFmts", "fonts", "fills", "borders", "cellStyleXfs", "cellXfs"),
     *("cellStyles", "dxfs", "tableStyles", "colors", "extLst"),
 )
+_MOST_STYLES = 66_000
+"""More of a kind no spreadsheet program takes, and comparing them takes long."""
 _FIRST_OWN_FORMAT = 164
 """Lower numbers are built-in formats."""
 
@@ -84,6 +86,8 @@ class StyleMerger:
     def _append(self, tag: str, item: Element) -> int:
         items = section(self._styles, tag, _ORDER)
         if tag not in self._known:
+            if len(items) > _MOST_STYLES:
+                raise PartTooLargeError(f"{len(items):,} {tag}")
             self._known[tag] = {}
             for index, old in enumerate(items):
                 self._known[tag].setdefault(_canonical(old), index)
