@@ -231,7 +231,9 @@ def test_formatted_empty_cells_do_not_count(read: Callable[[str], Cells]) -> Non
         ('<c t="s"><v>-1</v></c>', "IndexError"),
         ("<c><v>twelve</v></c>", "ValueError"),
         ('<c t="x"><v>1</v></c>', "KeyError"),
-        ("<c>", "XMLSyntaxError"),
+        ("<c>", "ExpatError"),
+        ('<c r="$A$1"><v>1</v></c>', "ValueError"),
+        ('<c r="日1"><v>1</v></c>', "ValueError"),
     ],
 )
 def test_a_broken_cell_names_its_sheet(read: Callable[[str], Cells], cell: str, cause: str) -> None:
@@ -249,7 +251,7 @@ def test_all_broken_sheets_are_told_at_once(book: Callable[[bytes], Path], plain
     assert problems == [
         f"book.xlsx  {sheet}: found a part that cannot be read ({cause}); expected a sound workbook. "
         "Open the file in your spreadsheet program, save it again, and try once more."
-        for sheet, cause in (("Zones", "XMLSyntaxError"), ("Lists", "KeyError"))
+        for sheet, cause in (("Zones", "ExpatError"), ("Lists", "KeyError"))
     ]
 
 

@@ -15,6 +15,7 @@ import pytest
 from openpyxl import Workbook, load_workbook
 from openpyxl.utils import range_boundaries
 
+from heatledger.inputs.cells import column_letters
 from heatledger.inputs.columns import Column, SheetRow
 from heatledger.inputs.rows import SHEETS, ProjectRow
 from heatledger.inputs.workbook_rows import check_rows
@@ -78,8 +79,15 @@ def validation(book: Workbook, model: type[SheetRow], field: str) -> Any:
     return found[0]
 
 
+def rules(book: Workbook, sheet: str) -> dict[str, list[str]]:
+    """Formulas of the conditional formats by the cells they stand on."""
+    found: Any = book[sheet].conditional_formatting
+    return {str(each.sqref): [rule.formula[0] for rule in each.rules] for each in found}
+
+
 def last_row(sheet: str) -> int:
-    return 5 + len(VALUES.get(sheet, [])) + SPARE
+    """A year has twelve months; every other sheet has its spare rows."""
+    return 17 if sheet == "Monthly climate" else 5 + len(VALUES.get(sheet, [])) + SPARE
 
 
 def test_sheets_stand_in_the_agreed_order(book: Workbook) -> None:
@@ -204,8 +212,20 @@ def test_titles_are_dark_where_required_and_light_where_not(book: Workbook) -> N
     for model, field, column in COLUMNS:
         cell = book[model.sheet].cell(5, position(model, field))
         assert cell.fill.fgColor.rgb == ("0022384A" if column.required else "00DCE4EA")
-    tints = {cell.fill.fgColor.rgb for model in TABLES for row in book[model.sheet]["A6:A60"] for cell in row}
+    tints = {cell.fill.fgColor.rgb for model in TABLES for row in book[model.sheet]["A6:A17"] for cell in row}
     assert tints == {"00FFF8E1"}
+
+
+@pytest.mark.parametrize("model", [model for model in TABLES if model.sheet != "Monthly climate"])
+def test_further_spare_rows_show_as_the_sheet_fills(book: Workbook, model: type[SheetRow]) -> None:
+    """A tint of its own would print them, empty as they are."""
+    sheet = book[model.sheet]
+    first, last = 6 + len(VALUES.get(model.sheet, [])) + 12, last_row(model.sheet)
+    for row in (first, last):
+        assert not any(cell.fill.fill_type or (cell.border.left and cell.border.left.style) for cell in sheet[row])
+    end = column_letters(len(model.columns()))
+    (formula,) = rules(book, model.sheet)[f"A{first}:{end}{last}"]
+    assert formula == f"COUNTA($A{first - 5}:${end}${last})>0"
 
 
 @pytest.mark.parametrize("model", SHEETS)
@@ -214,12 +234,43 @@ def test_titles_are_frozen_and_repeated_in_print(book: Workbook, model: type[She
     table = model is not ProjectRow
     assert sheet.freeze_panes == ("B6" if table else "B4")
     assert sheet.print_title_rows == ("$4:$5" if table else None)
-    assert (sheet.page_setup.paperSize, sheet.page_setup.orientation) == (9, "landscape")
+    upright, wide = model.sheet in {"Materials", "Monthly climate"}, model.sheet in {"Build-ups", "Ground floors"}
+    orientation = "portrait" if upright else "landscape"
+    assert (sheet.page_setup.paperSize, sheet.page_setup.orientation) == (9, orientation)
     assert sheet.sheet_properties.pageSetUpPr.fitToPage
-    assert (sheet.page_setup.fitToWidth, sheet.page_setup.fitToHeight) == (1, 0)
+    assert (sheet.page_setup.fitToWidth, sheet.page_setup.fitToHeight) == (2 if wide else 1, 0)
+    assert sheet.print_title_cols == ("$A:$A" if wide else None)
     footer = sheet.oddFooter
     assert (footer.left.text, footer.center.text) == ("Mill && Mews", "&A · &D")
     assert footer.right.text == "Page &P of &N"
+
+
+@pytest.mark.parametrize(("model", "field", "column"), COLUMNS)
+def test_slips_are_marked_on_all_spare_rows(book: Workbook, model: type[SheetRow], field: str, column: Column) -> None:
+    letters = column_letters(position(model, field))
+    found = rules(book, model.sheet).get(f"{letters}6:{letters}{last_row(model.sheet)}", [])
+    gaps = [formula for formula in found if formula.startswith(f'AND({letters}6="",COUNTA($A6:')]
+    assert len(gaps) == column.required
+    assert len(found) > len(gaps) or column.kind in {"text", "months"}
+
+
+def test_names_that_stand_twice_are_marked(book: Workbook) -> None:
+    twice = 'AND(A6<>"",SUMPRODUCT(--(TRIM($A$6:$A$67)=TRIM(A6)))>1)'
+    assert twice in rules(book, "Zones")["A6:A67"]
+    assert not [formula for formula in rules(book, "Build-ups")["A6:A68"] if "SUMPRODUCT" in formula]
+
+
+@pytest.mark.parametrize("model", TABLES)
+def test_an_example_stands_in_grey_above_the_units(book: Workbook, model: type[SheetRow]) -> None:
+    cells = [cell for cell in book[model.sheet][3] if cell.value]
+    assert cells
+    assert all(str(cell.value).startswith("e.g. ") for cell in cells)
+    assert {(cell.font.italic, cell.font.color.rgb) for cell in cells} == {(True, "0055606A")}
+
+
+def test_only_guide_and_lists_are_protected_and_without_password(book: Workbook) -> None:
+    assert [sheet.title for sheet in book if sheet.protection.sheet] == ["Guide", "Lists"]
+    assert all(sheet.protection.password is None for sheet in book)
 
 
 def test_fonts_are_named_and_colours_plain(book: Workbook) -> None:
@@ -284,7 +335,9 @@ def test_lists_work_and_pages_render(tmp_path: Path, data: bytes) -> None:
     assert all("Mill & Mews" in page for page in pages)
     for model in SHEETS:
         own = [page for page in pages if f"{model.sheet} · " in page]
-        assert 1 <= len(own) <= 4, model.sheet
-        for page in own:
-            assert all(column.title.split()[0] in page for column in model.columns().values()), model.sheet
+        side_by_side = 2 if model.sheet in {"Build-ups", "Ground floors"} else 1
+        assert len(own) == side_by_side, model.sheet
+        together = " ".join(own)
+        assert all(column.title.split()[0] in together for column in model.columns().values()), model.sheet
+        assert all(next(iter(model.columns().values())).title in page for page in own), model.sheet
     assert "###" not in text

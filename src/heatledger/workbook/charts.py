@@ -61,7 +61,8 @@ __all__ = [
 
 BLUE, ORANGE, GREEN, SKY, VERMILLION, YELLOW = "0072B2", "E69F00", "009E73", "56B4E9", "D55E00", "F0E442"
 """Palette of Okabe and Ito (2008), Color Universal Design."""
-GREY = "B0B0B0"
+GREY = "E2E2E2"
+"""Lighter than all others in a print without colours, where its rim tells it from the paper."""
 
 
 @dataclass(frozen=True)
@@ -273,9 +274,9 @@ def _series(sheet: Worksheet, categories: Area, bars: Bars, order: int) -> Serie
     series.tx = SeriesLabel(v=name) if isinstance(name, str) else SeriesLabel(strRef=_texts(sheet, name))
     series.cat = AxDataSource(strRef=_texts(sheet, categories))
     series.val = NumDataSource(numRef=_numbers(sheet, bars.values))
-    series.graphicalProperties = GraphicalProperties(
-        solidFill=bars.colour, ln=LineProperties(solidFill="FFFFFF", w=3175)
-    )
+    # A rim in the colour of the paper would cut the axis at every column of no height.
+    rim = LineProperties(solidFill="808080", w=3175) if bars.colour == GREY else LineProperties(noFill=True)
+    series.graphicalProperties = GraphicalProperties(solidFill=bars.colour, ln=rim)
     series.invertIfNegative = False
     return series
 

@@ -28,6 +28,8 @@ _OLD_OFFICE = b"\xd0\xcf\x11\xe0"
 _BROKEN_ZIP = (BadZipFile, zlib.error, EOFError, struct.error, ValueError, OverflowError, NotImplementedError)
 _BROKEN_XML = (etree.LxmlError, ExpatError, LookupError, ValueError, TypeError, AttributeError)
 _DOCTYPE = re.compile(rb"(?>\s+|<\?.*?\?>|<!--.*?-->)*+<!DOCTYPE", re.DOTALL)
+_LONGEST_PROLOGUE = 2_000_000
+"""Bytes in which a document type is sought; behind them the parsers refuse it in what is read."""
 _BYTE_ORDER_MARKS = b"\xef\xbb\xbf\xff\xfe\0"
 
 
@@ -177,8 +179,8 @@ def _check_doctypes(path: Path, package: Package) -> None:
 def _has_doctype(data: bytes) -> bool:
     """Whether XML in UTF-8 or UTF-16 declares a document type, and so perhaps entities."""
     if b"\0" in data[:4]:
-        data = data.replace(b"\0", b"")
-    return _DOCTYPE.match(data.lstrip(_BYTE_ORDER_MARKS)) is not None
+        data = data[: 2 * _LONGEST_PROLOGUE].replace(b"\0", b"")
+    return _DOCTYPE.match(data[:_LONGEST_PROLOGUE].lstrip(_BYTE_ORDER_MARKS)) is not None
 
 
 def _doctype(path: Path) -> InputError:

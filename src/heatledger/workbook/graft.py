@@ -8,23 +8,19 @@ from __future__ import annotations
 
 import posixpath
 import re
-import warnings
 from collections.abc import Collection, Iterable
 from dataclasses import dataclass, replace
 from functools import partial
 from pathlib import Path
-from typing import BinaryIO
-from zipfile import BadZipFile, ZipFile
+from xml.sax.saxutils import escape
 
-from openpyxl import load_workbook
-
-from heatledger.errors import InputError, Problem
 from heatledger.workbook.donor import DonorCopier
 from heatledger.workbook.files import lock_notes, write_whole
 from heatledger.workbook.gate import read_package, readable
 from heatledger.workbook.index import Index
 from heatledger.workbook.package import Package, SheetEntry, dump, main
-from heatledger.workbook.references import marker_name, rename_sheets
+from heatledger.workbook.readback import Judged, read_back
+from heatledger.workbook.references import marker_name, quoted, rename_sheets
 from heatledger.workbook.styles import EMPTY_STYLES, StyleMerger
 
 __all__ = ["GraftReport", "graft"]
@@ -81,8 +77,8 @@ def graft(original: Path, donor: bytes, target: Path) -> GraftReport:
     with readable(original):
         report = _merge(package, results)
     notes = report.notes + lock_notes(target)
-    verify = partial(_verify, original=original, target=target, titles=report.titles.values())
-    write_whole(target, package.to_bytes(), verify)
+    judged = Judged(target.name, frozenset(report.titles.values()), package)
+    write_whole(target, package.to_bytes(), partial(read_back, original=original, judged=judged))
     return replace(report, notes=notes)
 
 
@@ -106,7 +102,7 @@ def _merge(package: Package, donor: Package) -> GraftReport:
         added=tuple(new for old, new in titles.items() if old not in kept),
         replaced=tuple(new for old, new in titles.items() if old in kept),
         dropped=tuple(entry.title for entry in dropped),
-        notes=tuple(_notes(index, titles, kept)),
+        notes=(*_notes(index, titles, kept), *_formula_notes(package, titles, kept)),
     )
 
 
@@ -212,35 +208,15 @@ def _notes(index: Index, titles: dict[str, str], kept: dict[str, SheetEntry]) ->
         yield "The list of sheets is locked in this workbook; the result sheets were written all the same."
 
 
-def _verify(path: Path, *, original: Path, target: Path, titles: Collection[str]) -> None:
-    """Read back what was written, as another program would."""
-    cause = _flaw(path, titles)
-    if cause and (cause == "BadZipFile" or not _flaw(original, ())):  # who cannot read the original is no judge
-        found = f"that the result cannot be read back ({cause})"
-        fix = "Nothing was changed. Open and save the workbook in your spreadsheet program, and try again."
-        raise InputError([Problem(found, "a sound workbook", fix, file=target.name)])
-
-
-def _flaw(path: Path, titles: Collection[str]) -> str:
-    """What keeps another reader from reading these sheets."""
-    try:
-        with path.open("rb") as file:  # openpyxl refuses the name of a temporary file
-            _test_archive(file)
-            with warnings.catch_warnings():
-                warnings.simplefilter("ignore")  # openpyxl warns of what it would not keep
-                book = load_workbook(file, read_only=True)
-            for title in titles:
-                for _ in book[title].iter_rows(values_only=True):
-                    pass
-    except OSError:
-        raise
-    except Exception as error:  # whatever another reader stumbles over
-        return type(error).__name__
-    return ""
-
-
-def _test_archive(file: BinaryIO) -> None:
-    with ZipFile(file) as archive:
-        broken = archive.testzip()
-    if broken:
-        raise BadZipFile(broken)
+def _formula_notes(package: Package, titles: dict[str, str], kept: dict[str, SheetEntry]) -> Iterable[str]:
+    """A formula of the user keeps its stored value, since its sheet stays as it is."""
+    ours = {titles[old] for old in kept}
+    needles = [f"{escape(quoted(title))}!".encode() for title in ours]
+    needles += [f"{title}!".encode() for title in ours if title.isalnum()]
+    users = [entry for entry in package.sheets() if entry.kind == "worksheet" and entry.title not in titles.values()]
+    found = [entry.title for entry in users if any(needle in package.parts[entry.part] for needle in needles)]
+    if found:
+        yield (
+            f"Formulas on {', '.join(found)} use result sheets: Excel works them out anew when it opens the file, "
+            "LibreOffice when you press Ctrl+Shift+F9."
+        )

@@ -6,8 +6,9 @@ from openpyxl.worksheet.worksheet import Worksheet
 
 from heatledger.inputs.rows import SHEETS
 from heatledger.workbook.canvas import Canvas
-from heatledger.workbook.look import INPUT, LINK, OPTIONAL, PURPOSE, REQUIRED, SECTION, TITLE, UNIT, Style
+from heatledger.workbook.look import INPUT, LINK, OPTIONAL, PURPOSE, REQUIRED, SECTION, SMALL, TITLE, UNIT, Style
 from heatledger.workbook.pages import print_setup
+from heatledger.workbook.slips import MISSING, SLIP
 
 __all__ = ["CAUTIONS", "TITLE_OF_GUIDE", "write_guide"]
 
@@ -45,8 +46,12 @@ _SAMPLES: tuple[tuple[Style, str, str], ...] = (
     (OPTIONAL, "Light title", "May stay empty; its default then counts."),
     (INPUT, "Pale cell", "Type here. Unused rows stay empty."),
     (UNIT, "m²", "The unit of the column, in the row above its title."),
-    (Style(bold=True, colour="D55E00", border=INPUT.border, fill=INPUT.fill), "1,2", "Bold orange: text where a "
-     "number is expected, a number outside its limits, or a name that is not in the list."),
+    (Style(italic=True, size=8.5, colour=SMALL.colour), "e.g. 0.77", "An example, above the unit; nothing there is "
+     "read."),
+    (Style(bold=True, colour=SLIP, border=INPUT.border, fill=INPUT.fill), "1,2", "Bold orange: text where a number is "
+     "expected, a number outside its limits, a name that is not in the list or stands twice, openings that together "
+     "are larger than their element."),
+    (Style(border=INPUT.border, fill=MISSING), "", "Orange cell: this row is used, and the cell must not stay empty."),
 )  # fmt: skip
 
 

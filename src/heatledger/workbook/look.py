@@ -26,6 +26,7 @@ __all__ = [
     "RULE",
     "SECTION",
     "SMALL",
+    "TINT",
     "TITLE",
     "TOTAL",
     "UNIT",

@@ -9,7 +9,7 @@ from collections.abc import Iterable
 
 from openpyxl.cell.cell import ILLEGAL_CHARACTERS_RE
 
-__all__ = ["DASH", "LINE", "clean_text", "digits_for", "line_count"]
+__all__ = ["DASH", "LINE", "clean_text", "digits_for", "line_count", "shortened", "text_width"]
 
 DASH = "–"
 """Shown for a number that does not exist."""
@@ -46,6 +46,18 @@ def digits_for(values: Iterable[float | None]) -> str:
 def text_width(text: str) -> float:
     """Width of a text in column units; East Asian signs count double."""
     return sum(1.9 if unicodedata.east_asian_width(sign) in "WF" else 1.0 for sign in text)
+
+
+def shortened(text: str, most: int) -> str:
+    """A text without its middle, if it is too long: names in a series differ at their ends.
+
+    >>> shortened("Flat on the upper floor, number 12", 20)
+    'Flat on th… number 12'
+    """
+    if len(text) <= most:
+        return text
+    half = most // 2
+    return f"{text[: most - half].rstrip()}…{text[-half:]}"
 
 
 def line_count(text: str, width: float, size: float = 10, bold: bool = False) -> int:

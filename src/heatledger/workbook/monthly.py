@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import math
 from collections.abc import Iterable, Sequence
 
 import numpy as np
@@ -11,7 +10,7 @@ from heatledger.results import Months, Results, ZoneResult
 from heatledger.workbook.canvas import Canvas
 from heatledger.workbook.look import LONG, MONTHS, PURPOSE, TITLE, Style
 
-__all__ = ["conditioned", "head", "months_of_need", "shares_in_tenths", "sum_of", "year_mean"]
+__all__ = ["conditioned", "head", "months_of_need", "sum_of", "year_mean"]
 
 DAYS = np.array([31, 28, 31, 30, 31, 30, 31, 31, 30, 31, 30, 31], dtype=np.float64)
 SHARE_THAT_COUNTS = 0.01
@@ -47,23 +46,6 @@ def sum_of(zones: Iterable[ZoneResult], field: str) -> Months:
 def year_mean(months: Months) -> float:
     """Mean of the year, each month by its days."""
     return float(np.average(months, weights=DAYS))
-
-
-def shares_in_tenths(parts: Sequence[float]) -> list[float]:
-    """Shares of a sum in percent, rounded to tenths that add up to 100: those that lose most by it are rounded up.
-
-    >>> shares_in_tenths([1.0, 1.0, 1.0])
-    [33.4, 33.3, 33.3]
-    """
-    total = sum(parts)
-    if total <= 0:
-        return [0.0] * len(parts)
-    exact = [1000 * part / total for part in parts]
-    tenths = [math.floor(value) for value in exact]
-    by_loss = sorted(range(len(parts)), key=lambda place: tenths[place] - exact[place])
-    for place in by_loss[: 1000 - sum(tenths)]:
-        tenths[place] += 1
-    return [value / 10 for value in tenths]
 
 
 def months_of_need(need: Months) -> str:

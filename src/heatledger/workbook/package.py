@@ -13,6 +13,7 @@ from lxml import etree
 
 __all__ = [
     "MAIN",
+    "MOST_MARKS",
     "OFFICE",
     "RELATIONS",
     "TYPES_PART",
@@ -73,7 +74,10 @@ def main(tag: str) -> str:
 def parse(data: bytes) -> Element:
     """Root of an XML part, without comments; entities are never expanded, nothing is fetched."""
     parser = etree.XMLParser(resolve_entities=False, no_network=True, remove_comments=True, remove_pis=True)
-    return etree.fromstring(data, parser)
+    root = etree.fromstring(data, parser)
+    if root.getroottree().docinfo.internalDTD is not None:
+        raise ValueError("a document type")
+    return root
 
 
 def required(element: Element, key: str) -> str:

@@ -31,7 +31,7 @@ def print_setup(
     portrait: bool = False,
     one_page: bool = False,
 ) -> None:
-    """A4, fitted to the width, with page number, date, sheet and project in the footer."""
+    """A4, fitted to the width; page number, date, sheet and project, or else the file, in the footer."""
     sheet.page_setup.paperSize = "9"
     sheet.page_setup.orientation = "portrait" if portrait else "landscape"
     sheet.page_setup.fitToWidth = 1
@@ -44,7 +44,7 @@ def print_setup(
         sheet.print_title_rows = titles
     footer = cast("HeaderFooterItem", sheet.oddFooter)
     parts = (footer.left, footer.center, footer.right)
-    for part, text in zip(parts, (_footer_text(project), "&A · &D", "Page &P of &N"), strict=True):
+    for part, text in zip(parts, (_footer_text(project) or "&F", "&A · &D", "Page &P of &N"), strict=True):
         part.text, part.font, part.size = text, f"{FONT},Regular", 8
 
 

@@ -8,6 +8,7 @@ from openpyxl.worksheet.worksheet import Worksheet
 
 from heatledger.results import Results
 from heatledger.workbook.pages import book_bytes, new_book
+from heatledger.workbook.printed import printed
 from heatledger.workbook.sheet_balance import write_monthly_balance
 from heatledger.workbook.sheet_build_ups import write_build_ups
 from heatledger.workbook.sheet_losses import write_element_losses
@@ -42,9 +43,11 @@ def build_result_sheets(results: Results) -> bytes:
     -------
     bytes
         The .xlsx file; the same for the same results. As long as the zones stay the
-        same, their figures keep their cells.
+        same, their figures keep their cells. Figures that are summed up are rounded to
+        what is shown, so that the sums hold for the cells as well as on paper.
     """
     book = new_book()
+    results = printed(results)
     for title, write in RESULT_SHEETS.items():
         write(book.create_sheet(title), results)
     return book_bytes(book)

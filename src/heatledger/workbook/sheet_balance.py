@@ -3,28 +3,33 @@
 from __future__ import annotations
 
 from dataclasses import fields, replace
+from typing import Literal, TypeAlias
 
 import numpy as np
 from openpyxl.worksheet.worksheet import Worksheet
 
 from heatledger.results import ClimateResult, GroundFloorResult, Months, Results, ZoneResult, label_of
 from heatledger.workbook.canvas import Canvas
-from heatledger.workbook.charts import BLUE, GREY, ORANGE, SKY, VERMILLION, YELLOW, Area, Bars, add_columns
+from heatledger.workbook.charts import BLUE, GREEN, GREY, ORANGE, SKY, VERMILLION, YELLOW, Area, Bars, add_columns
 from heatledger.workbook.look import BODY, MONTHS, NUMBER, SECTION
 from heatledger.workbook.measure import LINE, digits_for
 from heatledger.workbook.monthly import conditioned, head, sum_of, year_mean
 from heatledger.workbook.pages import print_setup
+from heatledger.workbook.printed import ROUNDED, energy_digits
 
 __all__ = ["write_monthly_balance"]
 
 REMARK = (
     "Losses and gains of each calendar month as they enter the balance: transmission and ventilation at the "
-    "set-points, γ gains divided by losses, η the share that counts. Totals are formed before rounding."
+    "set-points, γ gains divided by losses, η the share that counts. "
+    f"{ROUNDED}"
 )
 HEADER_ROW = 5
 CHART_HEIGHT = 17
 """Rows behind the chart."""
 FIRST_MONTH, YEAR = 2, 14
+_Year: TypeAlias = Literal["sum", "mean", "none"]
+"""What stands in the column of the year."""
 
 GAINS = ("solar_gains", "internal_gains")
 HEATING = (
@@ -89,18 +94,20 @@ def _building(canvas: Canvas, row: int, results: Results) -> int:
     solar, internal = (sum_of(zones, field) for field in GAINS)
     transmission, ventilation = (sum_of(zones, field) for field in HEATING[:2])
     need = results.building.heating_need
-    unused = -(solar + internal + need - transmission - ventilation)
+    spared = sum((_spared(zone) for zone in zones), np.zeros(12))
+    unused = transmission + ventilation - solar - internal - need - spared
     flows = (
         ("Heating need [kWh]", need, VERMILLION),
         ("Internal gains [kWh]", internal, YELLOW),
         ("Solar gains less sky losses [kWh]", solar, ORANGE),
+        ("Spared by reduced heating hours [kWh]", spared, GREEN),
         ("Transmission [kWh]", -transmission, BLUE),
         ("Ventilation [kWh]", -ventilation, SKY),
         ("Gains not used [kWh]", unused, GREY),
     )
     first = row + 1
     for place, (title, months, _) in enumerate(flows):
-        _line(canvas, first + place, title, "kWh", months)
+        _line(canvas, first + place, title, energy_digits(results), months)
     series = [
         Bars(Area.across(first + place, 1, 1), Area.across(first + place, FIRST_MONTH, FIRST_MONTH + 11), colour)
         for place, (_, _, colour) in enumerate(flows)
@@ -118,16 +125,27 @@ def _building(canvas: Canvas, row: int, results: Results) -> int:
     return chart_row + CHART_HEIGHT + 1
 
 
+def _spared(zone: ZoneResult) -> Months:
+    """What reduced hours take off the need, in months that have one."""
+    if zone.heating_use != "reduced need":
+        return np.zeros(12)
+    losses = zone.transmission_heating + zone.ventilation_heating
+    held = losses - zone.gain_utilisation * (zone.solar_gains + zone.internal_gains)
+    spared = np.nan_to_num(np.round(held - zone.heating_need), nan=0.0)
+    return np.where(zone.heating_need > 0, np.maximum(spared, 0.0), 0.0)
+
+
 def _zone(canvas: Canvas, row: int, zone: ZoneResult, results: Results) -> int:
     """One zone; gives the row below it."""
     _section(canvas, row, f"{zone.name} · {zone.conditioning} · {zone.floor_area:,.1f} m²")
     row += 1
-    _line(canvas, row, label_of(ClimateResult, "temperature"), "°C", results.climate.temperature)
+    energy = energy_digits(results)
+    _line(canvas, row, label_of(ClimateResult, "temperature"), _DIGITS["°C"], results.climate.temperature, "mean")
     if zone.conditioning == "unconditioned":
-        return _facts(canvas, _lines(canvas, row + 1, zone, UNCONDITIONED), zone, UNCONDITIONED_FACTS)
-    row = _lines(canvas, row + 1, zone, GAINS)
+        return _facts(canvas, _lines(canvas, row + 1, zone, UNCONDITIONED, energy), zone, UNCONDITIONED_FACTS)
+    row = _lines(canvas, row + 1, zone, GAINS, energy)
     for part in (HEATING, COOLING, FANS):
-        row = _lines(canvas, row, zone, part)
+        row = _lines(canvas, row, zone, part, energy)
     return _facts(canvas, row, zone, FACTS)
 
 
@@ -135,20 +153,19 @@ def _ground_floor(canvas: Canvas, row: int, floor: GroundFloorResult) -> int:
     """One ground floor; gives the row below it."""
     _section(canvas, row, f"{floor.name} · {floor.type} · {floor.zone}")
     for place, name in enumerate(GROUND, start=row + 1):
-        _line(canvas, place, label_of(GroundFloorResult, name), _GROUND_UNITS[name], getattr(floor, name))
+        months = getattr(floor, name)
+        digits = _DIGITS.get(_GROUND_UNITS[name]) or digits_for(months.tolist())
+        _line(canvas, place, label_of(GroundFloorResult, name), digits, months, "mean")
     return _facts(canvas, row + 1 + len(GROUND), floor, GROUND_FACTS)
 
 
-def _lines(canvas: Canvas, row: int, zone: ZoneResult, names: tuple[str, ...]) -> int:
+def _lines(canvas: Canvas, row: int, zone: ZoneResult, names: tuple[str, ...], energy: str) -> int:
     for name in names:
-        _line(
-            canvas,
-            row,
-            label_of(ZoneResult, name),
-            "months" if name.endswith("_season") else _UNITS[name],
-            getattr(zone, name),
-            important=name.endswith("_need"),
-        )
+        unit = "months" if name.endswith("_season") else _UNITS[name]
+        year: _Year = {"°C": "mean", "-": "none"}.get(unit, "sum")  # type: ignore[assignment]
+        digits = _DIGITS.get(unit, energy)
+        important = name.endswith("_need")
+        _line(canvas, row, label_of(ZoneResult, name), digits, getattr(zone, name), year, important=important)
         row += 1
     return row
 
@@ -167,19 +184,24 @@ def _facts(canvas: Canvas, row: int, part: ZoneResult | GroundFloorResult, names
     return row
 
 
-def _line(canvas: Canvas, row: int, title: str, unit: str, months: Months, *, important: bool = False) -> None:
-    """Twelve months and what the year makes of them: a sum of energies and of shares of months, else a mean."""
+def _line(
+    canvas: Canvas,
+    row: int,
+    title: str,
+    digits: str,
+    months: Months,
+    year: _Year = "sum",
+    *,
+    important: bool = False,
+) -> None:
+    """Twelve months and what the year makes of them."""
     style = _NUMBER_BOLD if important else NUMBER
     canvas.put(row, 1, title, _BOLD if important else BODY)
-    digits = {"°C": "0.0", "-": "0.00", "months": "0.0"}.get(unit, "")
-    digits = digits or digits_for(months.tolist())
-    shown = np.where((months < 0) & (months > -0.5) & (unit in {"kWh", "W"}), 0.0, months)  # no "-0" in print
-    canvas.numbers(row, FIRST_MONTH, shown, style, digits)
-    if unit in {"kWh", "°C", "W", "months"}:
-        year = year_mean(months) if unit in {"°C", "W"} else float(np.sum(months))
-        canvas.numbers(row, YEAR, [year], style, "" if unit in {"kWh", "W"} else "0.0")
-    else:
+    canvas.numbers(row, FIRST_MONTH, months, style, digits)
+    if year == "none":
         canvas.put(row, YEAR, None, style)
+    else:
+        canvas.numbers(row, YEAR, [float(np.sum(months)) if year == "sum" else year_mean(months)], style, digits)
     canvas.height(row, 15)
 
 
@@ -189,6 +211,7 @@ def _section(canvas: Canvas, row: int, text: str) -> None:
     canvas.fit_merged(row, 1, last, text, size=11, bold=True)
 
 
+_DIGITS = {"°C": "0.0", "-": "0.00", "months": "0.0"}
 _UNITS = {item.name: item.metadata["unit"] for item in fields(ZoneResult)}
 _GROUND_UNITS = {item.name: item.metadata["unit"] for item in fields(GroundFloorResult)}
 _HEADING = replace(SECTION, wrap=True)

@@ -11,18 +11,20 @@ from heatledger.results import ElementLoss, Results, label_of
 from heatledger.workbook.canvas import Canvas
 from heatledger.workbook.charts import BLUE, Area, Bars, add_bars
 from heatledger.workbook.look import BODY, NUMBER, NUMBER_TOTAL, SECTION, SMALL, TOTAL
-from heatledger.workbook.measure import DASH, digits_for
+from heatledger.workbook.measure import DASH, shortened
 from heatledger.workbook.monthly import head
 from heatledger.workbook.pages import print_setup
+from heatledger.workbook.printed import ROUNDED, energy_digits
 
 __all__ = ["write_element_losses"]
 
 REMARK = (
     "What each element, opening, thermal bridge and air flow loses in the months in which its zone needs heating, "
     "the largest first. Negative: heat from a warmer space. Shares are of the sum of what leaves the conditioned "
-    "zones; what passes between two of them stands below the sum."
+    f"zones; what passes between two of them stands below the sum. {ROUNDED}"
 )
-MOST_BARS = 15
+MOST_BARS, MOST_OF_A_NAME = 15, 18
+"""Bars of the chart, and characters of a name beside one."""
 HEADER_ROW = 24
 LABEL_COLUMN = 11
 """Names for the chart, outside the printed area."""
@@ -40,7 +42,7 @@ def write_element_losses(sheet: Worksheet, results: Results) -> None:
     canvas.put(HEADER_ROW, LABEL_COLUMN, "Name in the chart", SMALL)
     ranked = sorted(results.element_losses, key=lambda loss: -loss.loss)
     losses = [loss for loss in ranked if not loss.between_zones]
-    digits = {**_DIGITS, "loss": digits_for(loss.loss for loss in ranked)}
+    digits = {**_DIGITS, "loss": energy_digits(results)}
     for rank, loss in enumerate(losses, start=1):
         _row(canvas, HEADER_ROW + rank, rank, loss, digits)
     last = HEADER_ROW + len(losses) + 1
@@ -72,8 +74,8 @@ def _row(canvas: Canvas, row: int, rank: int | None, loss: ElementLoss, digits: 
         shown = DASH if loss.between_zones and name == "share" else value
         canvas.put(row, place, shown, BODY if isinstance(value, str) else NUMBER, digits.get(name, "General"))
     if rank is not None:
-        label = f"{loss.name} · {loss.zone}"
-        canvas.put(row, LABEL_COLUMN, label if len(label) <= 48 else label[:47] + "…", SMALL)
+        label = f"{shortened(loss.name, MOST_OF_A_NAME)} · {shortened(loss.zone, MOST_OF_A_NAME)}"
+        canvas.put(row, LABEL_COLUMN, label, SMALL)
     canvas.fit(row, ("", loss.name, loss.zone, loss.kind, loss.faces))
 
 

@@ -2,23 +2,23 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
 from typing import NamedTuple
 
 import numpy as np
 from openpyxl.worksheet.worksheet import Worksheet
 
-from heatledger.results import BuildingResult, Months, Results, ZoneResult, label_of
+from heatledger.results import Months, Results, ZoneResult, label_of
 from heatledger.workbook.canvas import Canvas
 from heatledger.workbook.charts import SKY, VERMILLION, Area, Bars, add_bars, add_columns
 from heatledger.workbook.look import BODY, MONTHS, NUMBER, NUMBER_TOTAL, SECTION, TOTAL
-from heatledger.workbook.measure import LINE, digits_for
+from heatledger.workbook.measure import LINE, text_width
 from heatledger.workbook.monthly import conditioned, head
 from heatledger.workbook.pages import print_setup
+from heatledger.workbook.printed import ROUNDED, energy_digits
 
 __all__ = ["write_monthly_need"]
 
-REMARK = "Heat to supply to and to remove from the zones in each calendar month. Totals are formed before rounding."
+REMARK = f"Heat to supply to and to remove from the zones in each calendar month. {ROUNDED}"
 CHART_ROW, CHART_HEIGHT = 5, 16
 """First row of the charts and the rows they cover with few zones."""
 FIRST_MONTH, YEAR, PER_AREA = 3, 15, 16
@@ -36,15 +36,16 @@ class _Line(NamedTuple):
 
 def write_monthly_need(sheet: Worksheet, results: Results) -> None:
     """Write the sheet."""
-    canvas = Canvas(sheet, (30, 11, *[8.5] * 12, 10, 15))
+    longest = max((text_width(zone.name) for zone in results.zones), default=0.0)
+    canvas = Canvas(sheet, (min(max(30, 1.1 * longest + 2), 46), 11, *[8.5] * 12, 10, 15))
     head(canvas, results, sheet.title, REMARK)
     zones = conditioned(results)
     header = CHART_ROW + _chart_height(len(zones)) + 1
     canvas.space(CHART_ROW - 1, header - 1)
     per_area = "Year per floor area [kWh/m²]"
     canvas.titles(header, ("Zone", label_of(ZoneResult, "floor_area"), *MONTHS, "Year", per_area))
-    heating = _block(canvas, header + 1, "heating_need", zones, results.building)
-    cooling = _block(canvas, heating + 2, "cooling_need", zones, results.building)
+    heating = _block(canvas, header + 1, "heating_need", results)
+    cooling = _block(canvas, heating + 2, "cooling_need", results)
     canvas.keep_together([(header, heating), (heating + 2, cooling)], repeated=2 * LINE)
     _building_chart(sheet, header, heating, cooling)
     if zones:
@@ -57,13 +58,13 @@ def _chart_height(zones: int) -> int:
     return CHART_HEIGHT if zones <= MOST_COLUMNS else max(CHART_HEIGHT, min(zones, 26) + 2)
 
 
-def _block(canvas: Canvas, row: int, field: str, zones: Sequence[ZoneResult], building: BuildingResult) -> int:
+def _block(canvas: Canvas, row: int, field: str, results: Results) -> int:
     """One need: a heading, a row for each zone, the building's sum; gives the row of the sum."""
     canvas.put(row, 1, label_of(ZoneResult, field), SECTION)
     canvas.height(row, 20)
-    lines = [_Line(zone.name, zone.floor_area, getattr(zone, field)) for zone in zones]
-    total = _Line("Building", building.floor_area, getattr(building, field))
-    months = digits_for(np.ravel([line.need for line in lines]).tolist())
+    lines = [_Line(zone.name, zone.floor_area, getattr(zone, field)) for zone in conditioned(results)]
+    total = _Line("Building", results.building.floor_area, getattr(results.building, field))
+    months = energy_digits(results)
     for line in (*lines, total):
         row += 1
         is_total = line is total

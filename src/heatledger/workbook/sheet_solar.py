@@ -12,13 +12,14 @@ from heatledger.workbook.canvas import Canvas
 from heatledger.workbook.look import BODY, MONTHS, NUMBER, NUMBER_TOTAL, SECTION, TOTAL
 from heatledger.workbook.monthly import head
 from heatledger.workbook.pages import print_setup
+from heatledger.workbook.printed import ROUNDED, energy_digits
 
 __all__ = ["write_solar_gains"]
 
 REMARK = (
     "Sun on the plane of each opening in each calendar month, what obstructions and movable shading leave of it, and "
     "the part that enters: irradiation times these factors, area, share of glass and g-value. Factors of the year are "
-    "weighted by the sun. Losses to the sky are not taken off here."
+    f"weighted by the sun. Losses to the sky are not taken off here. {ROUNDED}"
 )
 HEADER_ROW = 5
 FACTS = ("azimuth", "tilt", "area", "u_value", "g_value", "angle_factor")
@@ -26,6 +27,7 @@ _DIGITS = {
     **{"azimuth": "0", "tilt": "0", "area": "#,##0.00"},
     **{"u_value": "0.00", "g_value": "0.00", "angle_factor": "0.00"},
 }
+_SUN = '#,##0;-#,##0;"–"'
 FIRST_MONTH, YEAR = 9, 21
 FACTORS = {
     "obstruction_factor": "obstruction",
@@ -42,19 +44,21 @@ def write_solar_gains(sheet: Worksheet, results: Results) -> None:
     titles = ("Opening", "Zone", *(label_of(OpeningGains, name) for name in FACTS), *MONTHS, "Year")
     canvas.titles(HEADER_ROW, titles, text_columns=2)
     openings = results.opening_gains
-    row = _sums(canvas, HEADER_ROW + 1, "irradiation", openings) + 1
+    digits = energy_digits(results)
+    row = _sums(canvas, HEADER_ROW + 1, "irradiation", openings, _SUN) + 1
     for field, name in FACTORS.items():
         shaded = [opening for opening in openings if getattr(opening, name)]
         if any((getattr(opening, field) < 1).any() for opening in shaded):
             row = _factors(canvas, row, field, shaded) + 1
-    row = _total(canvas, _sums(canvas, row, "gains", openings), "gains", openings)
+    row = _total(canvas, _sums(canvas, row, "gains", openings, digits), "gains", openings, digits)
     if any(opening.shading_device for opening in openings):
-        _total(canvas, _sums(canvas, row + 1, "gains_cooling", openings), "gains_cooling", openings)
+        row = _sums(canvas, row + 1, "gains_cooling", openings, digits)
+        _total(canvas, row, "gains_cooling", openings, digits)
     sheet.freeze_panes = f"B{HEADER_ROW + 1}"
     print_setup(sheet, results.project.project, titles=f"{HEADER_ROW}:{HEADER_ROW}")
 
 
-def _sums(canvas: Canvas, row: int, field: str, openings: Sequence[OpeningGains]) -> int:
+def _sums(canvas: Canvas, row: int, field: str, openings: Sequence[OpeningGains], digits: str) -> int:
     """A table of energies; gives the row below it."""
     _section(canvas, row, field)
     for number, opening in enumerate(openings, start=row + 1):
@@ -62,7 +66,7 @@ def _sums(canvas: Canvas, row: int, field: str, openings: Sequence[OpeningGains]
         for place, name in enumerate(FACTS, start=3):
             value = getattr(opening, name)
             canvas.put(number, place, "–" if value is None else value, NUMBER, _DIGITS[name])
-        _line(canvas, number, opening, months, float(np.sum(months)))
+        _line(canvas, number, opening, months, float(np.sum(months)), digits)
     return row + len(openings) + 1
 
 
@@ -81,7 +85,7 @@ def _section(canvas: Canvas, row: int, field: str) -> None:
     canvas.height(row, 20)
 
 
-def _line(canvas: Canvas, row: int, opening: OpeningGains, months: Months, year: float, digits: str = "") -> None:
+def _line(canvas: Canvas, row: int, opening: OpeningGains, months: Months, year: float, digits: str) -> None:
     canvas.put(row, 1, opening.name, BODY)
     canvas.put(row, 2, opening.zone, BODY)
     canvas.numbers(row, FIRST_MONTH, months, NUMBER, digits)
@@ -94,12 +98,12 @@ def _year(factors: Months, irradiation: Months) -> float:
     return float(np.average(factors, weights=irradiation)) if np.sum(irradiation) > 0 else float(np.mean(factors))
 
 
-def _total(canvas: Canvas, row: int, field: str, openings: Sequence[OpeningGains]) -> int:
+def _total(canvas: Canvas, row: int, field: str, openings: Sequence[OpeningGains], digits: str) -> int:
     """The sum of a table; gives the row below it."""
     months = np.sum([getattr(opening, field) for opening in openings], axis=0) if openings else np.zeros(12)
     canvas.put(row, 1, "Building", TOTAL)
     for column in range(2, FIRST_MONTH):
         canvas.put(row, column, None, TOTAL)
-    canvas.numbers(row, FIRST_MONTH, months, NUMBER_TOTAL)
-    canvas.numbers(row, YEAR, [float(np.sum(months))], NUMBER_TOTAL)
+    canvas.numbers(row, FIRST_MONTH, months, NUMBER_TOTAL, digits)
+    canvas.numbers(row, YEAR, [float(np.sum(months))], NUMBER_TOTAL, digits)
     return row + 1

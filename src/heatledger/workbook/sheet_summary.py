@@ -26,9 +26,9 @@ from heatledger.workbook.look import (
     TOTAL,
     Style,
 )
-from heatledger.workbook.measure import digits_for
-from heatledger.workbook.monthly import conditioned, months_of_need, shares_in_tenths, sum_of
+from heatledger.workbook.monthly import conditioned, months_of_need, sum_of
 from heatledger.workbook.pages import print_setup
+from heatledger.workbook.printed import ROUNDED, energy_digits, shares_in_tenths
 from heatledger.workbook.sheet_notes import NOTES
 
 __all__ = ["LOSS_GROUPS", "write_summary"]
@@ -49,6 +49,8 @@ LOSS_GROUPS = {
 }
 """Kinds of losses as the summary names them, in its order."""
 OTHER = "Other"
+MOST_CHECKS, MOST_OF_A_CHECK = 3, 190
+"""Checks that the page quotes, and their characters; sheet Notes holds all of them."""
 _PROJECT_TITLE = Style(bold=True, size=16, colour=SECTION.colour)
 _LABEL = Style(size=9, colour=SMALL.colour)
 _VALUE = Style(size=9)
@@ -59,7 +61,7 @@ def write_summary(sheet: Worksheet, results: Results) -> None:
     canvas = Canvas(sheet, (22, *[7.4] * 12, 9))
     _project(canvas, results)
     _key_figures(canvas, 8, results)
-    _months(canvas, 17, results.building)
+    _months(canvas, 17, results)
     _losses(canvas, 39, results)
     _last_words(canvas, 56, results)
     for gap in (7, 12, 16):
@@ -111,15 +113,14 @@ def _key_figures(canvas: Canvas, row: int, results: Results) -> None:
         canvas.merged(row + 1, first, last, title, HEAD_NUMBER if first in {4, 6} else _HEAD_INDENTED)
     canvas.height(row + 1, 16)
     for place, field in enumerate(("heating_need", "cooling_need"), start=row + 2):
-        _figure_row(canvas, place, field, spans, results.building)
+        _figure_row(canvas, place, field, spans, results)
     for place, sentence in enumerate(_sentences(results), start=row + 5):
         canvas.merged(place, 1, LAST, sentence, LONG)
         canvas.fit_merged(place, 1, LAST, sentence)
 
 
-def _figure_row(
-    canvas: Canvas, row: int, field: str, spans: Sequence[tuple[int, int]], building: BuildingResult
-) -> None:
+def _figure_row(canvas: Canvas, row: int, field: str, spans: Sequence[tuple[int, int]], results: Results) -> None:
+    building = results.building
     need: Months = getattr(building, field)
     year = float(np.sum(need))
     largest = int(np.argmax(need))
@@ -127,7 +128,7 @@ def _figure_row(
     month = f"{MONTHS[largest]}, {need[largest]:,.0f} kWh" if year > 0 else "none"
     title = label_of(BuildingResult, field).partition(" [")[0]
     values = (title, year, share, month, months_of_need(need))
-    digits = ("", digits_for([year]), '0.0;-0.0;"–"', "", "")
+    digits = ("", energy_digits(results), '0.0;-0.0;"–"', "", "")
     for (first, last), value, number_format in zip(spans, values, digits, strict=True):
         style = _FIGURE if not isinstance(value, str) else _NAME if first == 1 else _WORDS
         canvas.merged(row, first, last, value, style).number_format = number_format or "General"
@@ -179,16 +180,16 @@ def _driver_of_cooling(results: Results) -> str:
     return f"Main driver of cooling: {name}, {share:.0f} % of the gains of the cooled zones in months with cooling."
 
 
-def _months(canvas: Canvas, row: int, building: BuildingResult) -> None:
+def _months(canvas: Canvas, row: int, results: Results) -> None:
     """Rows 17 to 37: the needs month by month and their chart."""
     _heading(canvas, row, "Month by month")
     canvas.titles(row + 1, ("kWh", *MONTHS, "Year"))
     canvas.height(row + 1, 16)
     needs = ("heating_need", "cooling_need")
     for place, field in enumerate(needs, start=row + 2):
-        need: Months = getattr(building, field)
+        need: Months = getattr(results.building, field)
         canvas.put(place, 1, label_of(BuildingResult, field), BODY)
-        digits = digits_for([float(np.sum(need))])
+        digits = energy_digits(results)
         canvas.numbers(place, 2, need, NUMBER, digits)
         canvas.put(place, LAST, float(np.sum(need)), NUMBER, digits)
         canvas.height(place, 15)
@@ -222,7 +223,7 @@ def _losses(canvas: Canvas, row: int, results: Results) -> None:
     canvas.merged(row + 1, 2, 3, "kWh a year", HEAD_NUMBER)
     canvas.merged(row + 1, 4, 5, "Share [%]", HEAD_NUMBER)
     groups = _grouped(results.element_losses)
-    digits = digits_for([loss for _, loss, _ in groups])
+    digits = energy_digits(results)
     for place, group in enumerate(groups, start=row + 2):
         _loss_row(canvas, place, group, (BODY, NUMBER), digits)
     total = ("Sum", sum(loss for _, loss, _ in groups), sum(share for _, _, share in groups))
@@ -244,16 +245,32 @@ def _loss_row(
 
 def _last_words(canvas: Canvas, row: int, results: Results) -> None:
     """From row 56: what to doubt, and the cautions."""
-    checks = sum(note.kind == "check" for note in results.notes)
-    words = {0: "No figure asks for a second look.", 1: "1 check asks for a second look: see sheet Notes."}
-    text = words.get(checks, f"{checks} checks ask for a second look: see sheet Notes.")
-    cell = canvas.merged(row, 1, LAST, text, replace(LINK, border=LONG.border) if checks else LONG)
+    _heading(canvas, row, "What to doubt")
+    checks = [note.text for note in results.notes if note.kind == "check"]
+    for place in range(MOST_CHECKS):
+        text = f"• {_short(checks[place])}" if place < len(checks) else None
+        canvas.merged(row + 1 + place, 1, LAST, text, _VALUE)
+        canvas.height(row + 1 + place, 1)
+        if text:
+            canvas.fit_merged(row + 1 + place, 1, LAST, text, size=9)
+    row += MOST_CHECKS + 1
+    cell = canvas.merged(row, 1, LAST, _second_look(len(checks)), replace(LINK, border=LONG.border) if checks else LONG)
     canvas.link(cell, NOTES)
     canvas.height(row, 16)
     _heading(canvas, row + 1, "Cautions")
-    for place, caution in enumerate(CAUTIONS, start=row + 2):
+    for place, caution in enumerate((*CAUTIONS, f"Figures: {ROUNDED[0].lower()}{ROUNDED[1:]}"), start=row + 2):
         canvas.merged(place, 1, LAST, caution, SMALL)
         canvas.fit_merged(place, 1, LAST, caution, size=8.5)
+
+
+def _second_look(checks: int) -> str:
+    words = {0: "No figure asks for a second look.", 1: "1 check asks for a second look: see sheet Notes."}
+    return words.get(checks, f"{checks} checks ask for a second look: see sheet Notes.")
+
+
+def _short(text: str) -> str:
+    """A check as far as two lines hold it."""
+    return text if len(text) <= MOST_OF_A_CHECK else text[: MOST_OF_A_CHECK - 1].rstrip() + "…"
 
 
 def _heading(canvas: Canvas, row: int, text: str) -> None:

@@ -3,52 +3,46 @@
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import replace
 
 from openpyxl.comments import Comment
-from openpyxl.formatting.rule import Rule
-from openpyxl.styles import Font
-from openpyxl.styles.differential import DifferentialStyle
+from openpyxl.styles import Border
 from openpyxl.worksheet.datavalidation import DataValidation
 from openpyxl.worksheet.worksheet import Worksheet
 
 from heatledger.inputs.cells import column_letters, reference
-from heatledger.inputs.columns import Column, SheetRow
-from heatledger.inputs.rows import SHEETS, ProjectRow
+from heatledger.inputs.columns import Column, SheetRow, plain
+from heatledger.inputs.prefilled import example_values
+from heatledger.inputs.rows import SHEETS, MonthlyClimateRow, ProjectRow
 from heatledger.workbook.canvas import Canvas
-from heatledger.workbook.dropdowns import Key, Source, key_of, write_lists
+from heatledger.workbook.dropdowns import LISTS, Key, Source, key_of, write_lists
 from heatledger.workbook.guide import TITLE_OF_GUIDE, write_guide
 from heatledger.workbook.look import HEAD, INPUT, OPTIONAL, PURPOSE, REQUIRED, SMALL, TITLE, UNIT, Style
 from heatledger.workbook.measure import LINE, line_count
 from heatledger.workbook.pages import book_bytes, new_book, print_setup
+from heatledger.workbook.slips import Field, limits, mark_rows, mark_slips, name_areas, show_as_filled
 
 __all__ = ["build_template"]
 
 SPARE_ROWS = 60
 """Empty rows ready for input below the filled ones."""
-UNITS_ROW, HEADER_ROW, FIRST_ROW = 4, 5, 6
+TINTED_ROWS = 12
+"""Spare rows that show from the start; further ones show as the sheet fills, so that empty rows are not printed."""
+HINT_ROW, UNITS_ROW, HEADER_ROW, FIRST_ROW = 3, 4, 5, 6
 MOST_PROMPT, MOST_TITLE = 255, 32
 """Characters an input prompt and its title may have (ECMA-376 Part 1, 18.3.1.32)."""
-_SLIP = Font(bold=True, color="D55E00")
 _TEXT_INPUT = replace(INPUT, number_format="@")
 """Kept as text, lest a spreadsheet program turns months such as 5-9 into a date."""
-_NUMBER_INPUT = replace(INPUT, horizontal="right", indent=1)
-_JUST = 1e-9
-"""Validations know closed bounds only: an open bound is moved by less than anybody types."""
-
-
-@dataclass(frozen=True)
-class _Field:
-    """A column of a sheet with the cells it is typed in."""
-
-    column: Column
-    cells: str
-    first: str
-    list: str
-
-    @property
-    def is_number(self) -> bool:
-        return self.column.kind in {"number", "integer"}
+_NUMBER_INPUT = replace(INPUT, horizontal="right", wrap=False)
+_HINT = Style(italic=True, size=8.5, colour=SMALL.colour)
+_HINT_NUMBER = replace(_HINT, horizontal="right")
+MOST_OF_A_HINT = 40
+"""Characters of an example above a title."""
+MOST_WIDTH_OF_A_PAGE = 300.0
+"""Wider sheets print on two pages side by side, else nobody could read them. [characters]"""
+MOST_WIDTH_UPRIGHT = 150.0
+"""Narrower sheets print upright. [characters]"""
+_PROJECT_WIDTHS = (24, 44, 8, 84)
 
 
 def build_template(values: Mapping[str, Sequence[Mapping[str, object]]]) -> bytes:
@@ -72,21 +66,52 @@ def build_template(values: Mapping[str, Sequence[Mapping[str, object]]]) -> byte
     sheets = {model: book.create_sheet(model.sheet) for model in SHEETS}
     rows = {model: list(values.get(model.sheet, ())) for model in SHEETS}
     sources = {
-        model.sheet: Source(model.sheet, FIRST_ROW, FIRST_ROW + len(rows[model]) + SPARE_ROWS - 1) for model in SHEETS
+        model.sheet: Source(model.sheet, FIRST_ROW, FIRST_ROW + len(rows[model]) + _spare(model, rows[model]) - 1)
+        for model in SHEETS
     }
     lists = write_lists(book, sources)
+    name_areas(book, sources["Envelope"])
+    book[LISTS].protection.sheet = guide.protection.sheet = True
     for model, sheet in sheets.items():
         if model is ProjectRow:
             _labels(sheet, rows[model], lists)
         else:
             _table(sheet, model, rows[model], sources[model.sheet].last, lists)
-        print_setup(sheet, project, titles=f"{UNITS_ROW}:{HEADER_ROW}" if model is not ProjectRow else "")
+        titles = f"{UNITS_ROW}:{HEADER_ROW}" if model is not ProjectRow else ""
+        print_setup(sheet, project, titles=titles, portrait=_sheet_width(model) <= MOST_WIDTH_UPRIGHT)
+        if _sheet_width(model) > MOST_WIDTH_OF_A_PAGE:
+            sheet.page_setup.fitToWidth = 2
+            sheet.print_title_cols = "A:A"
     return book_bytes(book)
+
+
+def _spare(model: type[SheetRow], rows: Sequence[Mapping[str, object]]) -> int:
+    """Rows to leave empty; a year has twelve months."""
+    return max(12 - len(rows), 0) if model is MonthlyClimateRow else SPARE_ROWS
+
+
+def _sheet_width(model: type[SheetRow]) -> float:
+    columns = model.columns().values()
+    widths = _PROJECT_WIDTHS if model is ProjectRow else [_width(column, first=False) for column in columns]
+    return sum(widths)
+
+
+def _hints(canvas: Canvas, model: type[SheetRow]) -> None:
+    """An example of each column in grey, above the units, where nothing is read."""
+    example = example_values()[model.sheet][0]
+    texts = []
+    for place, (field, column) in enumerate(model.columns().items(), start=1):
+        value = example.get(field)
+        shown = "" if value is None else f"e.g. {plain(value) if isinstance(value, float) else value}"
+        texts.append(shown if len(shown) <= MOST_OF_A_HINT else "")
+        style = _HINT_NUMBER if column.kind in {"number", "integer", "azimuth"} else _HINT
+        canvas.put(HINT_ROW, place, texts[-1] or None, style)
+    canvas.fit(HINT_ROW, texts, size=8.5)
 
 
 def _labels(sheet: Worksheet, rows: Sequence[Mapping[str, object]], lists: Mapping[Key, str]) -> None:
     """The Project sheet: labels, values, units and notes side by side."""
-    canvas = Canvas(sheet, (24, 44, 8, 84))
+    canvas = Canvas(sheet, _PROJECT_WIDTHS)
     _heading(canvas, "Project data", ProjectRow.purpose)
     for place, title in enumerate(("Label", "Value", "Unit", "Note"), start=1):
         canvas.put(3, place, title, HEAD)
@@ -99,7 +124,7 @@ def _labels(sheet: Worksheet, rows: Sequence[Mapping[str, object]], lists: Mappi
         canvas.put(row, 4, note, SMALL)
         canvas.fit(row, (column.title, given.get(field), column.unit, note))
         cell = reference(row, 2)
-        _guard(sheet, _Field(column, cell, cell, lists.get(key_of(column), "")), prompt=False)
+        _guard(sheet, Field(column, cell, cell, lists.get(key_of(column), "")), prompt=False)
     sheet.freeze_panes = reference(UNITS_ROW, 2)
 
 
@@ -113,6 +138,7 @@ def _table(
     columns = model.columns()
     canvas = Canvas(sheet, [_width(column, place == 0) for place, column in enumerate(columns.values())])
     _heading(canvas, model.sheet, model.purpose)
+    _hints(canvas, model)
     for place, column in enumerate(columns.values(), start=1):
         canvas.put(UNITS_ROW, place, column.unit, UNIT)
         title = canvas.put(HEADER_ROW, place, column.title, REQUIRED if column.required else OPTIONAL)
@@ -123,16 +149,22 @@ def _table(
     for place, column in enumerate(columns.values(), start=1):
         letters = column_letters(place)
         cells = f"{letters}{FIRST_ROW}:{letters}{last}"
-        _guard(sheet, _Field(column, cells, f"{letters}{FIRST_ROW}", lists.get(key_of(column), "")))
+        _guard(sheet, Field(column, cells, f"{letters}{FIRST_ROW}", lists.get(key_of(column), "")))
+    mark_rows(sheet, model, FIRST_ROW, last)
+    show_as_filled(sheet, len(columns), FIRST_ROW + len(rows) + TINTED_ROWS, last)
     sheet.freeze_panes = reference(FIRST_ROW, 2)
 
 
 def _fill(canvas: Canvas, columns: Mapping[str, Column], rows: Sequence[Mapping[str, object]], last: int) -> None:
-    """Rows filled in, then spare ones."""
+    """Rows filled in, then spare ones, the last of them without tint and border as yet."""
+    styles = {_input_style(column) for column in columns.values()}
+    bare = {style: replace(style, fill="", border=Border()) for style in styles}
+    tinted = FIRST_ROW + len(rows) + TINTED_ROWS
     for row in range(FIRST_ROW, last + 1):
         given = rows[row - FIRST_ROW] if row - FIRST_ROW < len(rows) else {}
         for place, (field, column) in enumerate(columns.items(), start=1):
-            canvas.put(row, place, given.get(field), _input_style(column))
+            style = _input_style(column)
+            canvas.put(row, place, given.get(field), style if row < tinted else bare[style])
         canvas.fit(row, [given.get(field) for field in columns])
 
 
@@ -156,7 +188,7 @@ def _width(column: Column, first: bool) -> float:
         case "choice":
             return min(max(*(len(word) for word in column.choices), 9) + 4.0, 22.0)
         case "name":
-            return 24.0
+            return 28.0
         case "months":
             return 14.0
         case "text":
@@ -183,7 +215,7 @@ def _note(column: Column) -> Comment:
     return note
 
 
-def _guard(sheet: Worksheet, field: _Field, prompt: bool = True) -> None:
+def _guard(sheet: Worksheet, field: Field, prompt: bool = True) -> None:
     """Dropdown or limits, the prompt beside the cell, and the marking of slips."""
     validation = _validation(field)
     validation.allow_blank = True
@@ -195,16 +227,14 @@ def _guard(sheet: Worksheet, field: _Field, prompt: bool = True) -> None:
     if prompt or validation.type:
         validation.add(field.cells)
         sheet.add_data_validation(validation)
-    slip = _slip(field)
-    if slip:
-        sheet.conditional_formatting.add(field.cells, _marking(slip))
+    mark_slips(sheet, field)
 
 
-def _validation(field: _Field) -> DataValidation:
+def _validation(field: Field) -> DataValidation:
     column = field.column
     match column.kind:
         case "number" | "integer":
-            low, high = _limits(column)
+            low, high = limits(column)
             found = DataValidation(
                 type="whole" if column.kind == "integer" else "decimal",
                 operator="between",
@@ -229,31 +259,3 @@ def _stopping(validation: DataValidation, message: str) -> DataValidation:
     validation.errorTitle = "Please check"
     validation.error = message
     return validation
-
-
-def _limits(column: Column) -> tuple[float, float]:
-    """Closed bounds of a number; without a bound the widest that is ever meant."""
-    low = column.above + _JUST if column.above is not None else column.at_least
-    high = column.below - _JUST if column.below is not None else column.at_most
-    return (-1e9 if low is None else low, 1e9 if high is None else high)
-
-
-def _marking(slip: str) -> Rule:
-    return Rule("expression", dxf=DifferentialStyle(font=_SLIP), formula=[slip])
-
-
-def _slip(field: _Field) -> str:
-    """Formula that finds usual slips, also pasted ones, which no validation stops."""
-    cell = field.first
-    match field.column.kind:
-        case "number" | "integer":
-            low, high = _limits(field.column)
-            return f'AND({cell}<>"",OR(ISTEXT({cell}),{cell}<{low:.15g},{cell}>{high:.15g}))'
-        case "azimuth":
-            return (
-                f'AND({cell}<>"",IF(ISTEXT({cell}),ISNA(MATCH(TRIM({cell}),{field.list},0)),OR({cell}<0,{cell}>360)))'
-            )
-        case "name":
-            return f'AND({cell}<>"",ISNA(MATCH(TRIM({cell}),{field.list},0)))'
-        case "choice" | "months" | "text":
-            return ""
