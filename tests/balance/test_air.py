@@ -19,7 +19,7 @@ def exchange(building: Callable[[Any], Building], system: dict[str, Any] | None,
     """200 m³, n50 5 1/h at a normal site with several façades: leakage 200·5·0.07 = 70 m³/h."""
     more = zone.pop("usage", {})
     row = {"name": "Z", "conditioning": "heated", "usage": "U", "floor_area": 80.0, "air_volume": 200.0}
-    row |= {"leakage": 5.0, "air_system": "S" if system else ""} | zone
+    row |= {"leakage": 5.0, "air_system": "S" if system else "", "usage": zone.pop("usage_name", "U")} | zone
     usage = {"name": "U", "heating_set_point": 20.0, "cooling_set_point": 26.0, "area_per_person": 20.0}
     usage |= {"air_per_person": 30.0, "air_per_area": 0.5, "presence": 12.0} | more
     found = building(
@@ -118,3 +118,16 @@ def test_a_zone_out_of_use_only_leaks(building: Callable[[Any], Building]) -> No
     air = exchange(building, {"kind": "balanced", "rate": 0.5}, usage=usage)
     assert air.supplied == pytest.approx([100.0] * 6 + [0.0] * 2 + [100.0] * 4)
     assert air.leakage == pytest.approx(EVEN * 70)
+
+
+def test_warm_nights_do_not_cool(building: Callable[[Any], Building]) -> None:
+    """A cooling set-point of 16 °C lies below the 18 °C of July and August: only June's night air is let in."""
+    system = {"kind": "natural", "rate": 0.5, "night_cooling": 3.0, "night_cooling_months": (6, 7, 8)}
+    air = exchange(building, system, cooling_set_point=16.0)
+    assert air.cooling == pytest.approx([100 / 3] * 5 + [300 / 3] + [100 / 3] * 6)
+
+
+def test_a_frost_limit_does_not_count_without_a_set_point(building: Callable[[Any], Building]) -> None:
+    system = {"kind": "balanced", "rate": 0.5, "heat_recovery": 80.0, "frost_limit": -5.0}
+    air = exchange(building, system, leakage=0.0, conditioning="unconditioned", usage_name="")
+    assert air.heating == pytest.approx(EVEN * 20 / 3)

@@ -152,3 +152,49 @@ def test_a_zone_that_loses_nothing_is_refused(building: Callable[[Any], Building
         "Zones!A5  Zone: found no heat loss from 'Hall'; expected a positive sum of transmission and ventilation. "
         "Check its elements, thermal bridges, leakage and air system."
     )
+
+
+def test_a_roof_with_a_direction_but_no_tilt(notes: Callable[..., list[Note]]) -> None:
+    (note,) = notes("check", {"Envelope": {"kind": "roof"}})
+    assert note.text == "Wall: an azimuth without a tilt; taken as level (0°), so it has no say."
+    assert (note.sheet, note.cell) == ("Envelope", "H5")
+
+
+def test_a_fan_that_runs_too_briefly_is_told(notes: Callable[..., list[Note]]) -> None:
+    """100 m³/h are asked for while people are there, half of the day; 2 h of 500 m³/h are 42 m³/h."""
+    system = {"kind": "balanced", "rate_basis": "floor area", "rate": 5.0, "running_hours": 2.0}
+    (note,) = notes("check", {"Air systems": system, "Zones": {"leakage": 0.3, "exposed_facades": "one"}})
+    assert note.text == (
+        "Hall: outdoor air of 43 m³/h on average is less than the 100 m³/h of its usage; too little fresh air harms "
+        "health and building. Local codes on hygiene decide."
+    )
+
+
+def test_a_window_to_another_zone_gets_no_sun(notes: Callable[..., list[Note]]) -> None:
+    found = notes("check", {"Envelope": {"faces": "neighbour"}})
+    assert "O: no sun is counted, since Wall does not face outdoors." in [note.text for note in found]
+
+
+def test_the_limits_of_the_air_are_told(notes: Callable[..., list[Note]]) -> None:
+    system = {"kind": "balanced", "heat_recovery": 80.0, "frost_limit": -3.0, "fan_power": 0.3}
+    lines = [note.text for note in notes("method", {"Air systems": system})]
+    assert "Air carries 1200 J/(m³·K), at the altitude of the weather file, 0 m (ISO 2533:1975)." in lines
+    assert "Fan electricity is reported; its heat is not counted among the gains." in lines
+    assert "Cooling need: sensible heat only; drying the air takes more." in lines
+    assert (
+        "Frost limit of heat recovery: by the mean outdoor temperature of the month, in conditioned zones; colder "
+        "hours of milder months are not seen."
+    ) in lines
+
+
+def test_a_material_that_stores_nothing_is_told(building: Callable[[Any], Building], flat_sky: Any) -> None:
+    values = sound()
+    values["Zones"][0]["thermal_mass"] = "from build-ups"
+    values["Envelope"][0] |= {"u_value": None, "build_up": "Wall"}
+    values["Materials"] = [{"name": "Own brick", "conductivity": 0.5}]
+    values["Build-ups"] = [{"name": "Wall", "layer": 1, "material": "Own brick", "thickness": 365.0}]
+    found = calculate(building(values), flat_sky(OUTDOOR, SUN)).notes
+    text = "Own brick has no density or no specific heat on sheet Materials, so it stores no heat."
+    assert [(note.sheet, note.cell) for note in found if note.kind == "check" and text in note.text] == [
+        ("Build-ups", "C5")
+    ]

@@ -93,3 +93,33 @@ def test_the_season_is_as_long_as_its_months(building: Callable[[Any], Building]
     assert result.heating_season[:3].tolist() == [1, 1, 1]
     assert result.heating_season[3] == pytest.approx(0.9427, abs=2e-4)
     assert result.heating_season[6] == 0
+
+
+def neighbours(building: Callable[[Any], Building], flat_sky: Any, **usage: Any) -> ZoneResult:
+    """A flat above a school with a set-back of 10 °C."""
+    rows = [
+        {"name": "Flat", "heating_set_point": 20.0, "cooling_set_point": 26.0},
+        {"name": "School", "heating_set_point": 20.0, "cooling_set_point": 26.0, "setback": 10.0, **usage},
+    ]
+    zone = {"conditioning": "heated", "floor_area": 80.0, "air_volume": 200.0, "heat_capacity": 150.0, "leakage": 1.0}
+    wall = {"kind": "wall", "faces": "outdoors", "u_value": 0.5, "area": 60.0, "azimuth": 0.0, "absorptance": 0.0}
+    values: dict[str, list[dict[str, Any]]] = {
+        "Project": [{"project": "P", "weather": "x"}],
+        "Zones": [{**zone, "name": row["name"], "usage": row["name"]} for row in rows],
+        "Usage": rows,
+        "Envelope": [
+            {**wall, "name": "W1", "zone": "Flat"},
+            {**wall, "name": "W2", "zone": "School"},
+            {"name": "C", "zone": "School", "kind": "partition", "faces": "Flat", "u_value": 1.5, "area": 80.0},
+        ],
+    }
+    return calculate(building(values), flat_sky(OUTDOOR)).zone("Flat")
+
+
+def test_an_empty_neighbour_does_not_cool_in_summer(building: Callable[[Any], Building], flat_sky: Any) -> None:
+    """In July and August (21 and 20 °C outdoors) an empty school is no colder than outdoors."""
+    holidays = neighbours(building, flat_sky, months_out_of_use=(7, 8))
+    always = neighbours(building, flat_sky)
+    assert holidays.transmission_heating[[6, 7]] == pytest.approx(always.transmission_heating[[6, 7]])
+    winter = neighbours(building, flat_sky, months_out_of_use=(1,))
+    assert winter.transmission_heating[0] - always.transmission_heating[0] == pytest.approx(1.5 * 80 * 10 * 0.744)

@@ -200,7 +200,6 @@ def killed(target: Path, patch: str) -> int:
 
 
 @posix
-@posix
 @pytest.mark.parametrize(
     ("patch", "survivor"),
     [
@@ -241,6 +240,17 @@ def test_a_kill_at_any_moment_leaves_a_whole_file(tmp_path: Path) -> None:
             time.sleep(chance.uniform(0, 0.05))
             process.kill()
         assert path.read_bytes() in versions
+
+
+def test_what_a_killed_run_left_behind_goes_after_an_hour(tmp_path: Path) -> None:
+    old, young, foreign = (
+        tmp_path / f".heatledger-{name}.tmp" for name in ("0123456789abcdef", "fedcba9876543210", "notes of mine")
+    )
+    for path, age in ((old, 3700), (young, 60), (foreign, 9000)):
+        path.write_bytes(b"half")
+        os.utime(path, (time.time() - age,) * 2)
+    write_whole(tmp_path / "book.xlsx", b"new")
+    assert sorted(tmp_path.iterdir()) == sorted([young, foreign, tmp_path / "book.xlsx"])
 
 
 # A fresh workbook

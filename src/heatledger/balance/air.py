@@ -95,9 +95,11 @@ def air_exchange(zone: Zone, project: Project, heat_capacity: float, outdoor: Mo
         running = float(infiltration(zone.volume, zone.leakage, shielding, imbalance))
         mean = running * system.running_share + still * (1 - system.running_share)
         leaking = np.where(in_use, mean, still)
-    recovered = recovered_share(system.heat_recovery, zone.heating_set_point, outdoor, system.frost_limit)
+    # An unconditioned zone has no set-point from which to tell its exhaust, so its frost limit does not count.
+    exhaust = zone.heating_set_point if zone.conditioned else np.nan
+    recovered = recovered_share(system.heat_recovery, exhaust, outdoor, system.frost_limit)
     in_cooling = 0.0 if system.bypass else system.heat_recovery
-    night = _night_flow(zone, system)
+    night = _night_flow(zone, system, outdoor)
     return AirExchange(
         leaking,
         supplied,
@@ -123,7 +125,8 @@ def required_air(zone: Zone) -> float:
     return zone.floor_area * (usage.people_per_area * usage.air_per_person + usage.air_per_area)
 
 
-def _night_flow(zone: Zone, system: AirSystem) -> Months:
-    """Additional flow of the night, mean of the day, shape (12,). [m³/h]"""
+def _night_flow(zone: Zone, system: AirSystem, outdoor: Months) -> Months:
+    """Additional flow of the night, mean of the day, shape (12,); none in months that would bring in heat. [m³/h]"""
     months = [month in system.night_cooling_months for month in range(1, 13)]
-    return np.where(months, system.night_cooling * zone.volume * NIGHT_HOURS / 24, 0.0)
+    warmer = outdoor >= zone.cooling_set_point
+    return np.where(months & ~warmer, system.night_cooling * zone.volume * NIGHT_HOURS / 24, 0.0)

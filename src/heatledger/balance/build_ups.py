@@ -2,8 +2,10 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
+
 from heatledger.balance.capacity import effective_thickness_capacity, face_capacities, swing_of
-from heatledger.balance.constructions import Construction, Constructions
+from heatledger.balance.constructions import Construction, Constructions, Position
 from heatledger.building.model import Layer, Project
 from heatledger.results import BuildUpComparison, BuildUpResult, LayerResult, Months
 from heatledger.standards.iso13788 import steady_profile
@@ -14,7 +16,9 @@ ALIKE = 0.005
 """Figures that differ by less than this share count as equal. [-]"""
 
 
-def build_up_results(constructions: Constructions, project: Project, outdoor: Months) -> tuple[BuildUpResult, ...]:
+def build_up_results(
+    constructions: Constructions, project: Project, outdoor: Months, drops: Mapping[Position, float]
+) -> tuple[BuildUpResult, ...]:
     """Every build-up in every position: layers, U, temperatures at design conditions, storage.
 
     Parameters
@@ -26,6 +30,8 @@ def build_up_results(constructions: Constructions, project: Project, outdoor: Mo
     outdoor : ndarray, shape (12,)
         The coldest of these months stands outside where no design temperature is given, and their mean under a
         floor on the ground, whose soil takes no part here. [°C]
+    drops : mapping of position to float
+        Share of the difference between inside and outdoors that falls across a build-up between two zones. [-]
 
     Returns
     -------
@@ -37,17 +43,20 @@ def build_up_results(constructions: Constructions, project: Project, outdoor: Mo
     return tuple(
         _result(found, inside, float(outdoor.mean()), "to the ground")
         if found.position in grounded
-        else _result(found, inside, outside)
+        else _result(found, inside, inside - drops.get(found.position, 1.0) * (inside - outside))
         for found in constructions.used
     )
 
 
-def build_up_comparison(constructions: Constructions, project: Project, outdoor: Months) -> BuildUpComparison | None:
+def build_up_comparison(
+    constructions: Constructions, project: Project, outdoor: Months, drops: Mapping[Position, float]
+) -> BuildUpComparison | None:
     """The two build-ups named on Project in one position; None if none are named."""
     if constructions.compared is None:
         return None
-    temperatures = _design_temperatures(project, outdoor)
-    first, second = (_result(found, *temperatures) for found in constructions.compared)
+    inside, outside = _design_temperatures(project, outdoor)
+    behind = inside - drops.get(constructions.compared[0].position, 1.0) * (inside - outside)
+    first, second = (_result(found, inside, behind) for found in constructions.compared)
     return BuildUpComparison(first, second, _verdict(first, second))
 
 

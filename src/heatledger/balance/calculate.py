@@ -10,7 +10,7 @@ from numpy.typing import NDArray
 from heatledger.balance.air import AirExchange, air_exchange, air_heat_capacity
 from heatledger.balance.build_ups import build_up_comparison, build_up_results
 from heatledger.balance.capacity import heat_capacities
-from heatledger.balance.constructions import Constructions, construct
+from heatledger.balance.constructions import Constructions, Position, construct
 from heatledger.balance.gains import Gains, monthly_gains
 from heatledger.balance.ground import GroundCoupling, ground_couplings
 from heatledger.balance.needs import ModeBalance, mode_balance
@@ -61,9 +61,9 @@ def calculate(building: Building, climate: Climate) -> Results:
         _building_result(zones),
         element_losses(building, model.paths, model.air, heating, model.outdoor),
         model.gains.openings,
-        build_up_results(model.constructions, building.project, model.outdoor),
+        build_up_results(model.constructions, building.project, model.outdoor, model.drops()),
         notes_of(building, climate, model.air, model.constructions, cooling, model.gains.openings),
-        build_up_comparison(model.constructions, building.project, model.outdoor),
+        build_up_comparison(model.constructions, building.project, model.outdoor, model.drops()),
         ground_floor_results(building, model.ground, heating, cooling),
     )
 
@@ -99,6 +99,18 @@ class _HeatModel:
         """Of each zone; 0 for one without heat loss. [h]"""
         total = self.total_coefficients(mode)
         return time_constant(self.capacities, np.where(total > 0, total, np.inf))
+
+    def drops(self) -> dict[Position, float]:
+        """Largest share of the difference to outdoors that falls across each build-up between two zones. [-]"""
+        factors = {zone.name: float(b) for zone, b in zip(self.building.zones, self.factors, strict=True)}
+        shares: dict[Position, float] = {}
+        for element in self.building.elements:
+            found = self.constructions.of_element.get(element.name)
+            if found is not None and not element.faces_outdoors:
+                own = factors[element.zone]
+                share = abs(factors.get(element.faces, own) - own)
+                shares[found.position] = max(share, shares.get(found.position, 0.0))
+        return shares
 
     def uses(self) -> tuple[ZoneUse, ...]:
         """How each zone is used."""
@@ -146,7 +158,7 @@ def _balance(model: _HeatModel, mode: str) -> ModeBalance:
     zones, uses = model.building.zones, model.uses()
     coefficients, constants = model.air_coefficients(mode), model.time_constants(mode)
     temperatures = zone_temperatures(
-        model.paths, set_points(zones, uses, mode), coefficients, model.outdoor, model.gains.power(mode)
+        model.paths, set_points(zones, uses, mode, model.outdoor), coefficients, model.outdoor, model.gains.power(mode)
     )
     continuous = mode_balance(
         mode,

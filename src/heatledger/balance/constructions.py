@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
 from functools import partial
+from typing import TypeAlias
 
 from heatledger.balance.openings import OpeningProperties, opening_properties
 from heatledger.balance.sections import Slice, slices_of
@@ -28,13 +29,17 @@ from heatledger.standards.iso6946_corrections import (
     tapered_triangle_thin_apex,
 )
 
-__all__ = ["Construction", "Constructions", "Corrections", "construct", "construction"]
+__all__ = ["Construction", "Constructions", "Corrections", "Position", "construct", "construction"]
 
 _TAPERS = {
     "rectangle": tapered_rectangle,
     "triangle thick at apex": tapered_triangle_thick_apex,
     "triangle thin at apex": tapered_triangle_thin_apex,
 }
+
+
+Position: TypeAlias = tuple[str, Direction, Facing]
+"""Build-up, direction of heat flow, and what is behind."""
 
 
 @dataclass(frozen=True)
@@ -69,7 +74,7 @@ class Construction:
     corrections: Corrections
 
     @property
-    def position(self) -> tuple[str, Direction, Facing]:
+    def position(self) -> Position:
         """What tells it from other positions and build-ups."""
         return self.build_up.name, self.direction, self.facing
 

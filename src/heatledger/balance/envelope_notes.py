@@ -40,6 +40,7 @@ def envelope_checks(building: Building, constructions: Constructions) -> Iterato
             if note not in told:
                 told.add(note)
                 yield note
+    yield from _weightless(building)
     yield from _ventilated_inside(building)
     yield from _rain_on_no_roof(building)
 
@@ -92,6 +93,20 @@ def _layers(found: Construction) -> Iterator[Note]:
             if given:
                 text = "it stands outside a well ventilated air layer, so this correction does not count."
                 yield _check(layer, field, text)
+
+
+def _weightless(building: Building) -> Iterator[Note]:
+    """Materials without density or specific heat, in build-ups from which a zone takes its heat capacity."""
+    by_layers = [zone for zone in building.zones if zone.thermal_mass == "from build-ups"]
+    taking = {zone.name for zone in by_layers if zone.heat_capacity is None}
+    used = [e.build_up for e in building.elements if e.build_up and {e.zone, e.faces} & taking]
+    used += [f.build_up for f in building.ground_floors if f.build_up and f.zone in taking]
+    told: set[str] = set()
+    for layer in (layer for build_up in used for layer in build_up.layers):
+        if not layer.air and not layer.density and layer.material not in told:
+            told.add(layer.material)
+            text = f"{layer.material} has no density or no specific heat on sheet Materials, so it stores no heat."
+            yield _check(layer, "material", text)
 
 
 def _ventilated_inside(building: Building) -> Iterator[Note]:

@@ -74,7 +74,14 @@ def mode_balance(
     Returns
     -------
     ModeBalance
+
+    Raises
+    ------
+    ValueError
+        If a temperature is not a number.
     """
+    if not np.isfinite(temperatures).all():
+        raise ValueError("a zone has no temperature")  # would pass for a month without need
     transmission = np.zeros_like(temperatures)
     for path in paths:
         transmission[path.zone] += transfer(path, temperatures, HOURS)

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections import defaultdict
 from collections.abc import Iterator, Sequence
 
-from heatledger.balance.air import AirExchange, required_air
+from heatledger.balance.air import AirExchange, air_heat_capacity, required_air
 from heatledger.balance.constructions import Constructions
 from heatledger.balance.envelope_notes import envelope_checks, envelope_methods, material_sources
 from heatledger.balance.ground_notes import ground_checks
@@ -64,6 +64,8 @@ def notes_of(
     """
     checks = [
         *_geometry(building),
+        *_level_roofs(building),
+        *_without_sun(building),
         *_leakage(building),
         *_u_values(building, constructions),
         *envelope_checks(building, constructions),
@@ -75,7 +77,12 @@ def notes_of(
         *_overheating(building, cooling),
         *(Note("check", note, "Project", building.project.origin.cell("weather")) for note in climate.notes),
     ]
-    return (*checks, *_defaults(building.defaults), *_methods(building, openings), *_sources(building, climate))
+    return (
+        *checks,
+        *_defaults(building.defaults),
+        *_methods(building, climate, openings),
+        *_sources(building, climate),
+    )
 
 
 def _zone_check(zone: Zone, field: str, text: str) -> Note:
@@ -101,6 +108,23 @@ def _geometry(building: Building) -> Iterator[Note]:
         if zone.conditioned and _outside(share, OPENING_SHARE):
             usual = "{:g} to {:g} %".format(*OPENING_SHARE)
             yield _zone_check(zone, "floor_area", f"openings are {share:.0f} % of the floor area; usual is {usual}.")
+
+
+def _level_roofs(building: Building) -> Iterator[Note]:
+    """A direction without a tilt: the plane is taken as level, and the direction does not count."""
+    for element in building.elements:
+        row = element.origin
+        if element.faces_outdoors and row.tilt is None and row.azimuth is not None and element.azimuth is None:
+            text = f"{element.name}: an azimuth without a tilt; taken as level ({element.tilt:g}°), so it has no say."
+            yield Note("check", text, row.sheet, row.cell("azimuth"))
+
+
+def _without_sun(building: Building) -> Iterator[Note]:
+    for element in building.elements:
+        for opening in element.openings:
+            if not element.faces_outdoors and opening.glazed_unit.g_value > 0:
+                text = f"{opening.name}: no sun is counted, since {element.name} does not face outdoors."
+                yield Note("check", text, opening.origin.sheet, opening.origin.cell("element"))
 
 
 def _leakage(building: Building) -> Iterator[Note]:
@@ -152,7 +176,8 @@ def _fresh_air(building: Building, air: Sequence[AirExchange]) -> Iterator[Note]
             yield _zone_check(zone, "air_system", text)
             continue
         needed, flow = required_air(zone), float((exchange.leakage + exchange.supplied).max())
-        if flow < needed * (1 - 1e-9) * zone.air_system.running_share:
+        present = zone.usage.presence if zone.usage else 0.0
+        if flow <= 0 or flow < needed * (1 - 1e-9) * max(present, zone.air_system.running_share):
             text = (
                 f"outdoor air of {flow:.0f} m³/h on average is less than the {needed:.0f} m³/h of its usage; "
                 "too little fresh air harms health and building. Local codes on hygiene decide."
@@ -203,7 +228,7 @@ def _defaults(defaults: Sequence[DefaultUsed]) -> Iterator[Note]:
         yield Note("default", f"{column}{whose}: empty, taken as {value}{because}.", sheet, cells[0].cell)
 
 
-def _methods(building: Building, openings: Sequence[OpeningGains]) -> Iterator[Note]:
+def _methods(building: Building, climate: Climate, openings: Sequence[OpeningGains]) -> Iterator[Note]:
     method = building.project.method
     lines = [
         f"Monthly balance with utilisation factors: {method}, a = 1 + τ/15 h.",
@@ -216,11 +241,35 @@ def _methods(building: Building, openings: Sequence[OpeningGains]) -> Iterator[N
         "Radiation to the sky: 11 K below outdoor air (ISO 13790:2008, 11.4.6).",
         "Unconditioned zones: steady heat balance of all of them together, month by month (ISO 13789:2017).",
         "Air flows between zones are not modelled.",
+        _air_line(building, climate),
+        *_limits_of_air(building),
         *([NIGHT_COOLING] if any(zone.air_system and zone.air_system.night_cooling for zone in building.zones) else []),
         "Hours and days without use: ISO 13790:2008, 13.2: normal or mean set-point, or reduced need.",
         "Length of the season: ISO 13790:2008, 7.4.",
     ]
     yield from (Note("method", line, "", "") for line in lines)
+
+
+def _air_line(building: Building, climate: Climate) -> str:
+    project = building.project
+    altitude = climate.altitude if project.altitude is None else project.altitude
+    whose = "of the weather file" if project.altitude is None else "of sheet Project"
+    capacity = air_heat_capacity(project, altitude)
+    return f"Air carries {capacity:.0f} J/(m³·K), at the altitude {whose}, {altitude:.0f} m (ISO 2533:1975)."
+
+
+def _limits_of_air(building: Building) -> Iterator[str]:
+    """What the balance does not see of the air."""
+    systems = [zone.air_system for zone in building.zones if zone.air_system]
+    if any(system.frost_limit is not None for system in systems):
+        yield (
+            "Frost limit of heat recovery: by the mean outdoor temperature of the month, in conditioned zones; colder "
+            "hours of milder months are not seen."
+        )
+    if any(system.fan_power for system in systems):
+        yield "Fan electricity is reported; its heat is not counted among the gains."
+    if any(zone.cooled for zone in building.zones):
+        yield "Cooling need: sensible heat only; drying the air takes more."
 
 
 def _sources(building: Building, climate: Climate) -> Iterator[Note]:

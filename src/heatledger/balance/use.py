@@ -72,7 +72,9 @@ def months_in_use(zone: Zone) -> NDArray[np.bool_]:
     return np.array([month not in out for month in range(1, 13)])
 
 
-def set_points(zones: Sequence[Zone], uses: Sequence[ZoneUse], mode: str) -> NDArray[np.float64]:
+def set_points(
+    zones: Sequence[Zone], uses: Sequence[ZoneUse], mode: str, outdoor: NDArray[np.float64]
+) -> NDArray[np.float64]:
     """Monthly set-points of all zones in a mode.
 
     Parameters
@@ -83,16 +85,19 @@ def set_points(zones: Sequence[Zone], uses: Sequence[ZoneUse], mode: str) -> NDA
         How each is used.
     mode : str
         ``heating`` or ``cooling``.
+    outdoor : ndarray, shape (12,)
+        [°C]
 
     Returns
     -------
     ndarray, shape (zones, 12)
-        NaN for an unconditioned zone. In months out of use heating keeps the setback temperature. [°C]
+        NaN for an unconditioned zone. In months out of use heating keeps the setback temperature; where outdoors is
+        warmer the zone is as warm as that, up to its set-point, lest it cools its neighbours. [°C]
     """
-    return np.array([_months(zone, use, mode) for zone, use in zip(zones, uses, strict=True)])
+    return np.array([_months(zone, use, mode, outdoor) for zone, use in zip(zones, uses, strict=True)])
 
 
-def _months(zone: Zone, use: ZoneUse, mode: str) -> NDArray[np.float64]:
+def _months(zone: Zone, use: ZoneUse, mode: str, outdoor: NDArray[np.float64]) -> NDArray[np.float64]:
     if not zone.conditioned:
         return np.full(12, np.nan)
     if mode == "cooling":
@@ -100,7 +105,8 @@ def _months(zone: Zone, use: ZoneUse, mode: str) -> NDArray[np.float64]:
     normal = zone.heating_set_point
     if use.heating == "mean set-point":
         normal = use.normal_share * normal + (1 - use.normal_share) * _setback(zone)
-    return np.where(months_in_use(zone), normal, _setback(zone))
+    idle = np.clip(outdoor, _setback(zone), zone.heating_set_point)
+    return np.where(months_in_use(zone), normal, idle)
 
 
 def _setback(zone: Zone) -> float:

@@ -92,7 +92,7 @@ def recovered_share(
     [0.6667, 0.8, 0.8]
     """
     temperatures = np.asarray(outdoor, dtype=float)
-    if frost_limit is None or inside <= frost_limit:
+    if frost_limit is None or not inside > frost_limit:
         return np.full(temperatures.shape, efficiency)
     held_back = np.maximum(inside - temperatures, inside - frost_limit)
     return np.asarray(efficiency * (inside - frost_limit) / held_back)

@@ -4,8 +4,10 @@ from __future__ import annotations
 
 import errno
 import os
+import re
 import secrets
 import stat
+import time
 from collections.abc import Callable
 from contextlib import suppress
 from pathlib import Path
@@ -15,6 +17,9 @@ from heatledger.errors import InputError, Problem
 __all__ = ["create", "lock_notes", "write_whole"]
 
 _FULL = {errno.ENOSPC, errno.EFBIG, getattr(errno, "EDQUOT", errno.ENOSPC)}
+_LEFT_BEHIND = re.compile(r"\.heatledger-[0-9a-f]{16}\.tmp")
+_LONG_AGO = 3600.0
+"""Age from which a temporary file of ours is left behind. [s]"""
 _ELSEWHERE = "give another name with --output"
 
 
@@ -91,6 +96,15 @@ def _write(target: Path, data: bytes, verify: Callable[[Path], None] | None) -> 
         with suppress(OSError):
             beside.unlink(missing_ok=True)
     _sync_folder(target.parent)
+    _remove_left_behind(target.parent)
+
+
+def _remove_left_behind(folder: Path) -> None:
+    """Take away what a run that was killed left long ago; a younger file may belong to another run."""
+    with suppress(OSError):
+        for path in folder.glob(".heatledger-*.tmp"):
+            if _LEFT_BEHIND.fullmatch(path.name) and time.time() - path.stat().st_mtime > _LONG_AGO:
+                path.unlink()
 
 
 def _old_status(target: Path) -> os.stat_result | None:
