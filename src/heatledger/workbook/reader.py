@@ -19,7 +19,7 @@ __all__ = ["owned_sheets", "read_cells"]
 
 MOST_ROWS = 20_000
 MOST_COLUMNS = 500
-MOST_CELLS = 2_000_000
+MOST_CELLS = 1_000_000
 
 _NOT_A_DATE_PART = re.compile(r'"[^"]*"|\\.|_.|\*.|\[[^\]]*\]')
 _LONGEST_FORMAT = 255
@@ -56,8 +56,7 @@ def read_cells(path: Path, wanted: Collection[str] | None = None) -> dict[str, C
     """
     package = read_package(path)
     with readable(path):
-        budget = Budget()
-        book = _Book(budget, _strings(package, budget), *_dates(package))
+        book = _Book(Budget(), _strings(package), *_dates(package))
         entries = _user_sheets(package)
     only = None if wanted is None else {_folded(title) for title in wanted}
     sheets: dict[str, Cells] = {entry.title: {} for entry in entries}
@@ -99,9 +98,9 @@ def _owned(package: Package) -> frozenset[str]:
     return frozenset(title for _, title in global_markers(package.xml(package.workbook)))
 
 
-def _strings(package: Package, budget: Budget) -> list[str]:
+def _strings(package: Package) -> list[str]:
     part = package.related(package.workbook, "sharedStrings")
-    return hear_strings(package.parts[part], budget) if part else []
+    return hear_strings(package.parts[part], Budget()) if part else []
 
 
 def _dates(package: Package) -> tuple[list[bool], datetime]:

@@ -26,7 +26,7 @@ _ESCAPED = re.compile("_x([0-9A-Fa-f]{4})_")
 
 @dataclass
 class Budget:
-    """What may still be heard in one workbook.
+    """What may still be heard of all sheets, or of the shared strings.
 
     Parameters
     ----------
@@ -36,7 +36,7 @@ class Budget:
         Letters of all texts.
     """
 
-    elements: int = 3_000_000
+    elements: int = 2_500_000
     letters: int = 50_000_000
 
 
@@ -97,7 +97,7 @@ class _Hearer:
     def _counted(self, tag: str, attributes: dict[str, str]) -> None:
         self._budget.elements -= 1
         if self._budget.elements < 0:
-            raise PartTooLargeError("more than 3,000,000 rows and cells, empty ones included")
+            raise PartTooLargeError("more than 2,500,000 rows, cells and texts, empty ones included")
         self.start(tag, attributes)
 
     def start(self, tag: str, attributes: dict[str, str]) -> None:
