@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections import defaultdict
-from typing import TYPE_CHECKING, TypeVar
+from typing import TYPE_CHECKING
 
 from heatledger.building.defaults import defaults_that_count
 from heatledger.building.glazing import glazed_unit
@@ -45,8 +45,6 @@ __all__ = ["resolve"]
 
 HOURS_OF_YEAR = 8760.0
 """[h]"""
-
-Part = TypeVar("Part")
 
 
 def resolve(rows: Rows) -> Building:
