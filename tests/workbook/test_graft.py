@@ -632,3 +632,39 @@ def test_libreoffice_works_out_the_users_formulas_over_results(
     graft(path, donor, path)
     (tmp_path / "office").mkdir()
     assert read_cells(convert(path, tmp_path / "office"))["Sheet"][1, 1].value == 10600.0
+
+
+# Hostile or worn-out indexes
+
+
+def test_comments_in_the_styles_are_no_styles(book: Write, rich_book: bytes, donor: bytes, inject: Inject) -> None:
+    """They used to be counted as styles, and to compare one ended the process."""
+    edits = {
+        "xl/styles.xml": ("<cellXfs", "<!-- a --><?b c?><cellXfs"),
+        "xl/workbook.xml": ("<sheets>", "<sheets><!-- a -->"),
+    }
+    path = book(inject(inject(rich_book, {}, edits), {}, {"xl/styles.xml": ("<xf ", "<!-- a --><?b c?><xf ")}))
+    graft(path, donor, path)
+    assert owned_sheets(path) == {"Summary", "Monthly need"}
+    assert opened(path)["Summary"]["A1"].font.b
+
+
+@pytest.mark.parametrize(
+    ("content", "found"),
+    [
+        ("<fonts>" + "<font/>" * 66_001 + "</fonts>", "66,001 fonts"),
+        ("<fonts>" + '<font a="1"/>' * 1_000_001 + "</fonts>", "xl/styles.xml"),
+    ],
+)
+def test_styles_without_end_are_refused(
+    book: Write, rich_book: bytes, donor: bytes, inject: Inject, content: str, found: str
+) -> None:
+    data = inject(rich_book, {"xl/styles.xml": f'<styleSheet xmlns="{MAIN[1:-1]}">{content}</styleSheet>'.encode()}, {})
+    path = book(data)
+    with pytest.raises(InputError) as caught:
+        graft(path, donor, path)
+    assert str(caught.value) == (
+        f"book.xlsx: found a part that is too large ({found}); expected a workbook of usual size. "
+        "Clear the formats of empty rows and columns, or copy the input sheets into a new workbook."
+    )
+    assert path.read_bytes() == data
