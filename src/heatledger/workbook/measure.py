@@ -17,16 +17,18 @@ LINE = 14.0
 """Height of a text line of the body font. [pt]"""
 MOST_CHARACTERS = 32_767
 """A cell holds no more, in any spreadsheet program."""
+_NO_XML = re.compile("[\ud800-\udfff\ufffe\uffff]")
+"""What XML cannot hold besides control characters: halves of pairs and the two that are none."""
 _LOOKS_ESCAPED = re.compile("_(?=x[0-9A-Fa-f]{4}_)")
 
 
 def clean_text(text: str) -> str:
     """Text as a cell can hold it: without control characters, not over-long.
 
-    >>> clean_text("one" + chr(7) + " two")
+    >>> clean_text("one" + chr(7) + " two" + chr(0xFFFF))
     'one two'
     """
-    plain = ILLEGAL_CHARACTERS_RE.sub("", text).encode("utf-8", "ignore").decode("utf-8")
+    plain = _NO_XML.sub("", ILLEGAL_CHARACTERS_RE.sub("", text))
     plain = _LOOKS_ESCAPED.sub("_x005F_", plain)
     return plain if len(plain) <= MOST_CHARACTERS else plain[: MOST_CHARACTERS - 1] + "…"
 
