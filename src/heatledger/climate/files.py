@@ -19,6 +19,8 @@ __all__ = ["open_climate", "shipped_climates"]
 
 UNITS = {"latitude": "°", "longitude": "°", "time_zone": " h"}
 
+LONGEST_NAME = 100
+"""Letters of a wrong name that a sentence gives back."""
 LARGEST_FILE = 50_000_000
 """A year of hours takes 2 MB; much more is something else. [byte]"""
 
@@ -68,14 +70,18 @@ def open_climate(
 def _own_file(weather: str, folder: Path) -> Path:
     name = weather.strip()
     path = folder / name
-    if path.is_file():
+    try:
+        is_file, is_folder = path.is_file(), path.is_dir()
+    except (OSError, ValueError):  # longer than a path may be
+        is_file = is_folder = False
+    if is_file:
         return path
-    if path.is_dir():
+    if is_folder:
         fix = "Add the name of the weather file to the path."
         raise InputError([Problem(f"the folder '{name}'", "a weather file", fix)])
     if path.suffix or "/" in name or "\\" in name:
         fix = "Correct the path; it starts from the folder of the workbook."
-        raise InputError([Problem(f"no file '{name}'", "the path of a weather file", fix)])
+        raise InputError([Problem(f"no file '{_shortened(name)}'", "the path of a weather file", fix)])
     raise InputError([_unknown_name(name)])
 
 
@@ -88,7 +94,11 @@ def _unknown_name(name: str) -> Problem:
     names = ", ".join(shipped_climates())
     fix = f"Did you mean '{known[nearest[0]]}'?" if nearest else f"Shipped climates are {names}."
     expected = f"the name of a shipped climate, the path of a weather file, or '{MONTHLY_TABLE}'"
-    return Problem(f"the text '{name}'", expected, fix)
+    return Problem(f"the text '{_shortened(name)}'", expected, fix)
+
+
+def _shortened(name: str) -> str:
+    return name if len(name) <= LONGEST_NAME else f"{name[:LONGEST_NAME]}…"
 
 
 def _read(path: Path, name: str, moved: Callable[[Readings], Readings]) -> HourlyClimate:

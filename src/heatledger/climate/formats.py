@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import csv
 import re
 from collections.abc import Callable
 from typing import NamedTuple
@@ -22,6 +23,8 @@ from heatledger.errors import InputError, Problem
 
 __all__ = ["FORMATS", "decode", "read_climate"]
 
+LONGEST_LINE = 20_000
+"""An hour takes a few hundred letters; the readers take minutes over a line of millions."""
 FORMATS = "an EPW, TMY3, TMY2, PVGIS or NSRDB file or an hourly table of heatledger"
 
 
@@ -66,9 +69,12 @@ def read_climate(content: bytes, moved: Callable[[Readings], Readings] = lambda 
         raise InputError([Problem("a packed file (zip) or a workbook", FORMATS, fix)])
     text = decode(content)
     known = _format(text)
+    if not text.lstrip().startswith("{") and max(map(len, text.split("\n"))) > LONGEST_LINE:
+        found = f"{known.title} with a line of more than {LONGEST_LINE:,} letters"
+        raise InputError([Problem(found, FORMATS, "Download the file again.")])
     try:
         readings = known.reader(text)
-    except (AttributeError, KeyError, IndexError, TypeError, ValueError) as error:
+    except (AttributeError, KeyError, IndexError, TypeError, ValueError, RecursionError, csv.Error) as error:
         reason = f"{type(error).__name__}: {error}".splitlines()[0]
         fix = "Download the file again, or save it anew with the program it comes from."
         raise InputError([Problem(f"{known.title} that cannot be read ({reason})", FORMATS, fix)]) from error

@@ -67,7 +67,7 @@ def read_table(text: str) -> Readings:
         for title, (name, _) in COLUMNS.items()
         if title in frame
     }
-    labels = frame[["Month", "Day", "Hour"]].to_numpy(dtype=np.int64)
+    labels = frame[["Month", "Day", "Hour"]].fillna(0).to_numpy(dtype=np.int64)  # a row that was cut
     return Readings(head["Name"], head.get("Source", ""), site, float(head[SUN_OFFSET]), labels, columns)
 
 
