@@ -146,7 +146,7 @@ def envelope_methods() -> tuple[str, ...]:
         "Heat capacity from layers: ISO 13786:2017, 24 h, from the surface without its film, both faces of partitions "
         "inside a zone, plus 10 kJ/(m²·K) of floor for air and furniture.",
         "Temperatures inside build-ups: ISO 13788:2012, one-dimensional, at the design temperatures of sheet Project; "
-        "bridged layers with their mean resistance.",
+        "between zones with their share of the drop to outdoors, by factor b; bridged layers by their mean resistance.",
     )
 
 
