@@ -9,6 +9,7 @@ import numpy as np
 from heatledger.balance.months import HOURS
 from heatledger.balance.use import months_in_use
 from heatledger.building.model import AirSystem, Project, Zone
+from heatledger.climate.model import Climate
 from heatledger.results import Months
 from heatledger.standards.iso2533 import pressure_ratio
 from heatledger.standards.iso13789 import (
@@ -19,7 +20,7 @@ from heatledger.standards.iso13789 import (
     ventilation_coefficient,
 )
 
-__all__ = ["AirExchange", "air_exchange", "air_heat_capacity", "required_air"]
+__all__ = ["AirExchange", "air_exchange", "air_heat_capacity", "required_air", "site_altitude"]
 
 NIGHT_HOURS = 8.0
 """Hours a day that night cooling counts. [h] Common practice, no source."""
@@ -51,6 +52,11 @@ class AirExchange:
     def cooling(self) -> Months:
         """Coefficient in cooling mode. [W/K]"""
         return self.leakage_coefficient + self.supplied_cooling
+
+
+def site_altitude(project: Project, climate: Climate) -> float:
+    """Altitude of the building: as typed, else that of the weather. [m]"""
+    return climate.altitude if project.altitude is None else project.altitude
 
 
 def air_heat_capacity(project: Project, altitude: float) -> float:

@@ -3,11 +3,12 @@
 from __future__ import annotations
 
 from dataclasses import dataclass, replace
+from functools import cached_property
 
 import numpy as np
 from numpy.typing import NDArray
 
-from heatledger.balance.air import AirExchange, air_exchange, air_heat_capacity
+from heatledger.balance.air import AirExchange, air_exchange, air_heat_capacity, site_altitude
 from heatledger.balance.build_ups import build_up_comparison, build_up_results
 from heatledger.balance.capacity import heat_capacities
 from heatledger.balance.constructions import Constructions, Position, construct
@@ -27,6 +28,9 @@ from heatledger.standards.iso13790 import numerical_parameter, time_constant
 from heatledger.standards.iso13790_use import limit_ratio, season_fraction
 
 __all__ = ["calculate"]
+
+MODES = ("heating", "cooling")
+"""The two balances of a month; figures of the zone that need one mode are those of heating."""
 
 
 def calculate(building: Building, climate: Climate) -> Results:
@@ -48,7 +52,7 @@ def calculate(building: Building, climate: Climate) -> Results:
     InputError
         If a conditioned zone loses no heat at all, so that it has no time constant.
     """
-    altitude = climate.altitude if building.project.altitude is None else building.project.altitude
+    altitude = site_altitude(building.project, climate)
     air_capacity = air_heat_capacity(building.project, altitude)
     model = _heat_model(building, climate, air_capacity)
     _require_losses(model)
@@ -61,9 +65,9 @@ def calculate(building: Building, climate: Climate) -> Results:
         _building_result(zones),
         element_losses(building, model.paths, model.air, heating, model.outdoor),
         model.gains.openings,
-        build_up_results(model.constructions, building.project, model.outdoor, model.drops()),
+        build_up_results(model.constructions, building.project, model.outdoor, model.drops),
         notes_of(building, climate, model.air, model.constructions, cooling, model.gains.openings),
-        build_up_comparison(model.constructions, building.project, model.outdoor, model.drops()),
+        build_up_comparison(model.constructions, building.project, model.outdoor, model.drops),
         ground_floor_results(building, model.ground, heating, cooling),
     )
 
@@ -87,19 +91,25 @@ class _HeatModel:
     transmission: NDArray[np.float64]
     """Of each zone towards outdoors and ground. [W/K]"""
 
-    def air_coefficients(self, mode: str) -> NDArray[np.float64]:
-        """Heat carried by outdoor air, shape (zones, 12). [W/K]"""
-        return _monthly(self.air, mode)
+    @cached_property
+    def air_coefficients(self) -> dict[str, NDArray[np.float64]]:
+        """Heat carried by outdoor air, by mode, shape (zones, 12). [W/K]"""
+        return {mode: _monthly(self.air, mode) for mode in MODES}
 
-    def total_coefficients(self, mode: str) -> NDArray[np.float64]:
-        """Transmission and air of each zone, mean of the year. [W/K]"""
-        return np.asarray(self.transmission + self.air_coefficients(mode).mean(axis=1))
+    @cached_property
+    def total_coefficients(self) -> dict[str, NDArray[np.float64]]:
+        """Transmission and air of each zone, by mode, mean of the year. [W/K]"""
+        return {mode: self.transmission + air.mean(axis=1) for mode, air in self.air_coefficients.items()}
 
-    def time_constants(self, mode: str) -> NDArray[np.float64]:
-        """Of each zone; 0 for one without heat loss. [h]"""
-        total = self.total_coefficients(mode)
-        return time_constant(self.capacities, np.where(total > 0, total, np.inf))
+    @cached_property
+    def time_constants(self) -> dict[str, NDArray[np.float64]]:
+        """Of each zone, by mode; 0 for one without heat loss. [h]"""
+        return {
+            mode: time_constant(self.capacities, np.where(total > 0, total, np.inf))
+            for mode, total in self.total_coefficients.items()
+        }
 
+    @cached_property
     def drops(self) -> dict[Position, float]:
         """Largest share of the difference to outdoors that falls across each build-up between two zones. [-]"""
         factors = {zone.name: float(b) for zone, b in zip(self.building.zones, self.factors, strict=True)}
@@ -112,9 +122,10 @@ class _HeatModel:
                 shares[found.position] = max(share, shares.get(found.position, 0.0))
         return shares
 
+    @cached_property
     def uses(self) -> tuple[ZoneUse, ...]:
         """How each zone is used."""
-        constants = zip(self.time_constants("heating"), self.time_constants("cooling"), strict=True)
+        constants = zip(*(self.time_constants[mode] for mode in MODES), strict=True)
         return tuple(zone_use(zone, *pair) for zone, pair in zip(self.building.zones, constants, strict=True))
 
 
@@ -125,8 +136,9 @@ def _heat_model(building: Building, climate: Climate, air_capacity: float) -> _H
     paths = heat_paths(building, constructions, ground, outdoor)
     air = tuple(air_exchange(zone, building.project, air_capacity, outdoor) for zone in building.zones)
     conditioned = np.array([zone.conditioned for zone in building.zones])
-    _require_heat_paths(building, paths, _monthly(air, "heating"))
-    factors = adjustment_factors(paths, conditioned, _monthly(air, "heating"))
+    air_in_heating = _monthly(air, "heating")
+    _require_heat_paths(building, paths, air_in_heating)
+    factors = adjustment_factors(paths, conditioned, air_in_heating)
     return _HeatModel(
         building,
         outdoor,
@@ -155,8 +167,8 @@ def _transmission(paths: tuple[HeatPath, ...], factors: NDArray[np.float64]) -> 
 
 def _balance(model: _HeatModel, mode: str) -> ModeBalance:
     """Temperatures, then balance, then intermittency of all zones in one mode."""
-    zones, uses = model.building.zones, model.uses()
-    coefficients, constants = model.air_coefficients(mode), model.time_constants(mode)
+    zones, uses = model.building.zones, model.uses
+    coefficients, constants = model.air_coefficients[mode], model.time_constants[mode]
     temperatures = zone_temperatures(
         model.paths, set_points(zones, uses, mode, model.outdoor), coefficients, model.outdoor, model.gains.power(mode)
     )
@@ -205,7 +217,7 @@ def _require_losses(model: _HeatModel) -> None:
     problems = [
         _no_loss(zone)
         for zone, *coefficients in zip(
-            model.building.zones, model.total_coefficients("heating"), model.total_coefficients("cooling"), strict=True
+            model.building.zones, *(model.total_coefficients[mode] for mode in MODES), strict=True
         )
         if zone.conditioned and min(coefficients) <= 0
     ]
@@ -215,9 +227,9 @@ def _require_losses(model: _HeatModel) -> None:
 
 def _zone_result(number: int, model: _HeatModel, heating: ModeBalance, cooling: ModeBalance) -> ZoneResult:
     zone = model.building.zones[number]
-    constant = float(model.time_constants("heating")[number])
-    exponents = [float(numerical_parameter(model.time_constants(mode)[number])) for mode in ("heating", "cooling")]
-    use = model.uses()[number]
+    constants = [float(model.time_constants[mode][number]) for mode in MODES]
+    exponents = [float(numerical_parameter(constant)) for constant in constants]
+    use = model.uses[number]
     nothing = np.zeros(12)
     return ZoneResult(
         name=zone.name,
@@ -242,10 +254,10 @@ def _zone_result(number: int, model: _HeatModel, heating: ModeBalance, cooling: 
         heating_use=use.heating,
         cooling_use=use.cooling,
         exponent=exponents[0],
-        time_constant=constant,
+        time_constant=constants[0],
         heat_capacity=float(model.capacities[number]) / 1000,
         transmission_coefficient=float(model.transmission[number]),
-        ventilation_coefficient=float(model.air_coefficients("heating")[number].mean()),
+        ventilation_coefficient=float(model.air_coefficients["heating"][number].mean()),
         heating_set_point=zone.heating_set_point,
         cooling_set_point=zone.cooling_set_point,
         temperature=heating.temperature[number],

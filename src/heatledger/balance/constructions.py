@@ -138,7 +138,7 @@ def construct(building: Building) -> Constructions:
     -------
     Constructions
     """
-    known: dict[tuple[str, Direction, Facing], Construction] = {}
+    known: dict[Position, Construction] = {}
 
     def placed(build_up: BuildUp, direction: Direction, facing: Facing) -> Construction:
         key = (build_up.name, direction, facing)

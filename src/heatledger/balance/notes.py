@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections import defaultdict
 from collections.abc import Iterator, Sequence
 
-from heatledger.balance.air import AirExchange, air_heat_capacity, required_air
+from heatledger.balance.air import AirExchange, air_heat_capacity, required_air, site_altitude
 from heatledger.balance.constructions import Constructions
 from heatledger.balance.envelope_notes import envelope_checks, envelope_methods, material_sources
 from heatledger.balance.ground_notes import ground_checks
@@ -252,7 +252,7 @@ def _methods(building: Building, climate: Climate, openings: Sequence[OpeningGai
 
 def _air_line(building: Building, climate: Climate) -> str:
     project = building.project
-    altitude = climate.altitude if project.altitude is None else project.altitude
+    altitude = site_altitude(project, climate)
     whose = "of the weather file" if project.altitude is None else "of sheet Project"
     capacity = air_heat_capacity(project, altitude)
     return f"Air carries {capacity:.0f} J/(m³·K), at the altitude {whose}, {altitude:.0f} m (ISO 2533:1975)."

@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING
 
 from heatledger.building.model import BuildUp, Fasteners, Layer, MaterialSource, SecondMaterial, Voids
 from heatledger.inputs.columns import plain
-from heatledger.inputs.prefilled import shipped_materials
+from heatledger.inputs.prefilled import known_materials, shipped_materials
 from heatledger.inputs.rows import AIR_LAYERS
 from heatledger.inputs.wording import folded
 
@@ -36,7 +36,7 @@ def resolve_build_ups(rows: Rows) -> dict[str, BuildUp]:
     -------
     dict of str to BuildUp
     """
-    materials = _materials(rows)
+    materials = known_materials(rows)
     layers: dict[str, list[BuildUpRow]] = defaultdict(list)
     for row in rows.build_ups:
         layers[folded(row.name)].append(row)
@@ -77,10 +77,6 @@ def _own_values(row: MaterialRow) -> str:
     figures = zip(_values(row), ("W/(m·K)", "kg/m³", "J/(kg·K)"), strict=True)
     told = [f"{plain(value)} {unit}" for value, unit in figures if value is not None]
     return ", ".join([*told, row.source] if row.source else told)
-
-
-def _materials(rows: Rows) -> Mapping[str, MaterialRow]:
-    return {**shipped_materials(), **{folded(row.name): row for row in rows.materials}}
 
 
 def _layer(row: BuildUpRow, materials: Mapping[str, MaterialRow]) -> Layer:

@@ -10,7 +10,7 @@ from heatledger.errors import Problem
 from heatledger.inputs.checking import problem_at
 from heatledger.inputs.columns import plain
 from heatledger.inputs.names import Typed
-from heatledger.inputs.prefilled import shipped_materials
+from heatledger.inputs.prefilled import known_materials
 from heatledger.inputs.rowchecks import crossed_set_points, default_tilt, is_level
 from heatledger.inputs.rows import NEIGHBOUR, OUTDOORS, BuildUpRow, Rows, ThermalBridgeRow, UsageRow, ZoneRow
 from heatledger.inputs.rules_build_ups import layers_together
@@ -117,7 +117,7 @@ def _layers(rows: Rows, typed: Typed) -> Iterator[Problem]:
 
 def _thin_layers(rows: Rows, typed: Typed) -> Iterator[Problem]:
     """Less than a millimetre of what is neither sheet nor foil was typed in metres."""
-    materials = {**shipped_materials(), **{folded(row.name): row for row in rows.materials}}
+    materials = known_materials(rows)
     for layer in rows.build_ups:
         material = materials.get(folded(layer.material))
         bulky = material is not None and material.density is not None and material.density < LIGHTEST_SHEET

@@ -9,10 +9,10 @@ from importlib import resources
 from typing import TypeAlias
 
 from heatledger.inputs.columns import Column, SheetRow
-from heatledger.inputs.rows import MONTHS, SHEETS, MaterialRow, MonthlyClimateRow, UsageRow
+from heatledger.inputs.rows import MONTHS, SHEETS, MaterialRow, MonthlyClimateRow, Rows, UsageRow
 from heatledger.inputs.wording import folded
 
-__all__ = ["Values", "blank_values", "example_values", "shipped_materials", "shipped_usages"]
+__all__ = ["Values", "blank_values", "example_values", "known_materials", "shipped_materials", "shipped_usages"]
 
 Values: TypeAlias = dict[str, list[dict[str, object]]]
 """Filled cells by sheet name: rows as field name and value."""
@@ -48,6 +48,11 @@ def shipped_materials() -> Mapping[str, MaterialRow]:
     """
     rows = (MaterialRow.model_validate(row) for row in _rows(MaterialRow, "materials.csv"))
     return {folded(row.name): row for row in rows}
+
+
+def known_materials(rows: Rows) -> Mapping[str, MaterialRow]:
+    """Materials that a build-up may name, by folded name: the shipped ones, and before them those of the workbook."""
+    return {**shipped_materials(), **{folded(row.name): row for row in rows.materials}}
 
 
 @cache

@@ -10,6 +10,7 @@ from typing import cast
 
 from heatledger.inputs.cells import Cell
 from heatledger.inputs.columns import COMPASS, Column, plain
+from heatledger.inputs.words import MONTHS
 
 __all__ = [
     "as_number",
@@ -25,10 +26,7 @@ __all__ = [
 
 _NUMBER_IN_TEXT = re.compile(r"^([-+−]?(?:\d+(?:[.,]\d+)?|[.,]\d+))\s*((?![\d.,]).*)$")
 _PERHAPS_THOUSANDS = re.compile(r"^[-+−]?[1-9]\d{0,2},\d{3}$")
-_MONTHS = (
-    *("january", "february", "march", "april", "may", "june"),
-    *("july", "august", "september", "october", "november", "december"),
-)
+_MONTHS = tuple(name.casefold() for name in MONTHS)
 _LONGEST = 60
 """Letters of a typed text that a sentence gives back."""
 

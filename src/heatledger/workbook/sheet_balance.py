@@ -72,11 +72,12 @@ def write_monthly_balance(sheet: Worksheet, results: Results) -> None:
     canvas = Canvas(sheet, (46, *[8.5] * 12, 10))
     head(canvas, results, sheet.title, REMARK)
     canvas.titles(HEADER_ROW, ("Quantity", *MONTHS, "Year"))
-    row = _building(canvas, HEADER_ROW + 1, results)
+    energy = energy_digits(results)
+    row = _building(canvas, HEADER_ROW + 1, results, energy)
     blocks = [(HEADER_ROW + 1, row - 1)]
     for zone in results.zones:
         first = row
-        row = _zone(canvas, first, zone, results) + 1
+        row = _zone(canvas, first, zone, results.climate, energy) + 1
         blocks.append((first, row - 1))
     for floor in results.ground_floors:
         first = row
@@ -87,7 +88,7 @@ def write_monthly_balance(sheet: Worksheet, results: Results) -> None:
     print_setup(sheet, results.project.project, titles=f"{HEADER_ROW}:{HEADER_ROW}")
 
 
-def _building(canvas: Canvas, row: int, results: Results) -> int:
+def _building(canvas: Canvas, row: int, results: Results, energy: str) -> int:
     """Flows into (+) and out of (−) the conditioned zones in heating mode; each month's sum is zero."""
     _section(canvas, row, "Building in heating mode: heat into the conditioned zones (+) and out of them (−)")
     zones = conditioned(results)
@@ -107,7 +108,7 @@ def _building(canvas: Canvas, row: int, results: Results) -> int:
     )
     first = row + 1
     for place, (title, months, _) in enumerate(flows):
-        _line(canvas, first + place, title, energy_digits(results), months)
+        _line(canvas, first + place, title, energy, months)
     series = [
         Bars(Area.across(first + place, 1, 1), Area.across(first + place, FIRST_MONTH, FIRST_MONTH + 11), colour)
         for place, (_, _, colour) in enumerate(flows)
@@ -135,12 +136,11 @@ def _spared(zone: ZoneResult) -> Months:
     return np.where(zone.heating_need > 0, np.maximum(spared, 0.0), 0.0)
 
 
-def _zone(canvas: Canvas, row: int, zone: ZoneResult, results: Results) -> int:
+def _zone(canvas: Canvas, row: int, zone: ZoneResult, climate: ClimateResult, energy: str) -> int:
     """One zone; gives the row below it."""
     _section(canvas, row, f"{zone.name} · {zone.conditioning} · {zone.floor_area:,.1f} m²")
     row += 1
-    energy = energy_digits(results)
-    _line(canvas, row, label_of(ClimateResult, "temperature"), _DIGITS["°C"], results.climate.temperature, "mean")
+    _line(canvas, row, label_of(ClimateResult, "temperature"), _DIGITS["°C"], climate.temperature, "mean")
     if zone.conditioning == "unconditioned":
         return _facts(canvas, _lines(canvas, row + 1, zone, UNCONDITIONED, energy), zone, UNCONDITIONED_FACTS)
     row = _lines(canvas, row + 1, zone, GAINS, energy)
