@@ -3,11 +3,12 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Mapping
+from collections import defaultdict
+from collections.abc import Callable, Mapping
 from dataclasses import dataclass, field
 from datetime import date
 from pathlib import Path
-from typing import TypeAlias
+from typing import TypeAlias, cast
 
 import pytest
 
@@ -20,6 +21,9 @@ Value: TypeAlias = str | float | bool | date | Cell | None
 Changes: TypeAlias = Mapping[str, Value]
 """``Sheet!E5`` and its value (None clears), ``Sheet!5:5`` and None, ``Sheet`` and its new name (None removes)."""
 Grid: TypeAlias = tuple[tuple[Value, ...], ...]
+Tell: TypeAlias = Callable[..., None]
+"""``tell("{} cases, {} tracebacks", 1, 0)``: a line for the end of the run."""
+_TOLD = "told"
 
 COTTAGE: dict[str, Grid] = {
     "Project": (
@@ -283,3 +287,34 @@ def _plain(value: object) -> Value:
 def example() -> Book:
     """The filled example."""
     return example_book()
+
+
+@pytest.fixture
+def tell(record_property: Callable[[str, object], None]) -> Tell:
+    """Say something at the end of the run, in any process; numbers of lines of the same wording are added up."""
+
+    def say(line: str, *numbers: int) -> None:
+        record_property(_TOLD, (line, numbers))
+
+    return say
+
+
+def pytest_terminal_summary(terminalreporter: pytest.TerminalReporter) -> None:
+    """Print the lines that tests told."""
+    lines = _told(terminalreporter)
+    if lines:
+        terminalreporter.section("counts")
+    for line in lines:
+        terminalreporter.write_line(line)
+
+
+def _told(terminal: pytest.TerminalReporter) -> list[str]:
+    reports = (report for group in terminal.stats.values() for report in group)
+    ended = [report for report in reports if getattr(report, "when", "") == "teardown"]
+    sums: dict[str, list[int]] = defaultdict(list)
+    for report in ended:
+        for key, value in report.user_properties:
+            if key == _TOLD:
+                line, numbers = cast(tuple[str, tuple[int, ...]], value)
+                sums[line] = [sum(pair) for pair in zip(numbers, sums[line] or [0] * len(numbers), strict=True)]
+    return [line.format(*numbers) if numbers else line for line, numbers in sums.items()]
