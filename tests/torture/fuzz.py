@@ -3,17 +3,17 @@
     python -m tests.torture.fuzz --cases 5000 --seed 7
 
 A case passes if the exit status is 0 or 1 without a traceback, within the limits of time and memory; if the status is 1
-the workbook is as it was, if it is 0 the workbook opens again.
+the workbook is as it was, if it is 0 the workbook opens again and holds every part that it held.
 """
 
 from __future__ import annotations
 
 import argparse
+import faulthandler
 import gc
 import json
 import os
 import random
-import resource
 import sys
 import tempfile
 import time
@@ -30,6 +30,8 @@ SECONDS = 10.0
 """Longest time of processor that one case may take. [s]"""
 MEGABYTES = 1000
 """Most memory that the process may ever hold. [MB]"""
+HANGING = 120.0
+"""Time on the clock after which a case ends the process and shows where it stood. [s]"""
 
 
 @dataclass
@@ -75,13 +77,17 @@ def large_names(text: str | None) -> list[str]:
 
 def try_case(name: str, data: bytes, folder: Path, count: Count) -> Result:
     """Calculate one workbook and note what is wrong with that."""
+    import resource  # Windows has none
+
     from heatledger.cli import main
 
     path = folder / "case.xlsx"
     path.write_bytes(data)
     report = ["--report", str(folder / "report.xlsx")] if count.cases % 3 == 0 else []
     before, started = sorted(os.listdir(folder)), time.process_time()
+    faulthandler.dump_traceback_later(HANGING, exit=True)
     result = CliRunner().invoke(main, ["run", str(path), *report])
+    faulthandler.cancel_dump_traceback_later()
     took = time.process_time() - started
     count.cases += 1
     count.last, count.longest = took, max(count.longest, took)
@@ -111,15 +117,17 @@ def _judge(name: str, data: bytes, path: Path, result: Result, count: Count) -> 
     ):
         count.tracebacks.append(f"{name}: no sentence\n{result.output[-3000:]}")
     if result.exit_code == 0:
-        flaw = _flaw(path)
+        flaw = _flaw(data, path)
         if flaw:
             count.unsound.append(f"{name}: {flaw}")
     elif path.read_bytes() != data:
         count.changed.append(name)
 
 
-def _flaw(path: Path) -> str:
-    """What keeps the result from being opened."""
+def _flaw(data: bytes, path: Path) -> str:
+    """What keeps the result from being opened, or what it lost."""
+    from tests.torture.mutations import unpacked
+
     from heatledger.errors import InputError
     from heatledger.workbook.reader import owned_sheets
 
@@ -127,7 +135,16 @@ def _flaw(path: Path) -> str:
         owned = owned_sheets(path)
     except InputError as error:
         return str(error)
-    return "" if len(owned) > 5 else f"only {len(owned)} result sheets"
+    if len(owned) <= 5:
+        return f"only {len(owned)} result sheets"
+    new = unpacked(path.read_bytes())
+    lost = [name for name, part in unpacked(data).items() if new.get(name) != part and not _is_index(name)]
+    return f"other parts {lost}" if lost else ""
+
+
+def _is_index(name: str) -> bool:
+    """Whether a part lists the others or holds the formats: these grow."""
+    return name.endswith((".rels", "[Content_Types].xml", "workbook.xml", "styles.xml"))
 
 
 def bases(given: list[Path]) -> list[bytes]:

@@ -1,62 +1,104 @@
-"""Kills a process that writes a workbook, at moments drawn at random; the file is always the old or the new one, whole.
+"""Kills processes at moments drawn at random; the workbook is always the old or the new one, whole.
 
-python -m tests.torture.kill BASE.xlsx FOLDER --kills 1000 --seed 3
+    python -m tests.torture.kill BASE.xlsx FOLDER --kills 1000 --runs 200 --seed 3
+
+``--kills`` counts kills of a process that does nothing but write, ``--runs`` kills of whole runs of the command.
 """
 
 from __future__ import annotations
 
 import argparse
+import json
 import os
 import random
 import signal
 import time
 from collections import Counter
 from collections.abc import Callable
+from itertools import cycle
 from pathlib import Path
 
-
-def versions(base: Path, folder: Path) -> tuple[bytes, bytes]:
-    """The calculated workbook, with and without a picture of 3 MB that makes writing last."""
-    from tests.torture.mutations import packed, unpacked
-
-    from heatledger.assess import assess
-    from heatledger.workbook.graft import graft
-    from heatledger.workbook.result_sheets import build_result_sheets
-
-    first = folder / "first.xlsx"
-    graft(base, build_result_sheets(assess(base)), first)
-    parts = unpacked(first.read_bytes())
-    parts["xl/media/image9.png"] = random.Random(1).randbytes(3_000_000)
-    return first.read_bytes(), packed(parts)
+Action = Callable[[], object]
 
 
-def whole(data: bytes, path: Path) -> Callable[[], None]:
-    """Writes the file once, verified as a run does."""
-    from heatledger.workbook.files import write_whole
-    from heatledger.workbook.gate import check_package
-
-    return lambda: write_whole(path, data, check_package)
-
-
-def killed(actions: list[Callable[[], None]], moment: float) -> None:
-    """Repeat the actions in a process of its own until it is killed."""
+def killed(act: Action, moment: float) -> None:
+    """Act in a process of its own that is killed at a moment, if it has not ended. [s]"""
     ready, go = os.pipe()
     child = os.fork()
     if child == 0:
         try:
             os.write(go, b"x")
-            while True:
-                for action in actions:
-                    action()
+            act()
         finally:
-            os._exit(1)  # only the signal may end it
+            os._exit(0)
     os.read(ready, 1)
     time.sleep(moment)
     os.kill(child, signal.SIGKILL)
-    _, status = os.waitpid(child, 0)
+    os.waitpid(child, 0)
     os.close(ready)
     os.close(go)
-    assert os.WIFSIGNALED(status), "the writer ended by itself"
+
+
+def took(act: Action) -> float:
+    """Time of one go. [s]"""
+    started = time.monotonic()
+    act()
+    return time.monotonic() - started
+
+
+def run(path: Path) -> None:
+    """The command on a workbook, in this process."""
+    from click.testing import CliRunner
+
+    from heatledger.cli import main
+
+    assert CliRunner().invoke(main, ["run", str(path)]).exit_code == 0
+
+
+def writing_killed(base: Path, folder: Path, kills: int, chance: random.Random) -> Counter[str]:
+    """Kill a process that writes the result, and the same with a picture of 3 MB, over and over."""
+    from tests.torture.mutations import packed, unpacked
+
+    from heatledger.workbook.files import write_whole
+    from heatledger.workbook.gate import check_package
+
+    target = folder / "written.xlsx"
+    target.write_bytes(base.read_bytes())
+    run(target)
+    large = unpacked(target.read_bytes()) | {"xl/media/image9.png": random.Random(1).randbytes(3_000_000)}
+    versions = {target.read_bytes(): "small", packed(large): "large"}
+
+    def write_all() -> None:
+        for data in versions:
+            write_whole(target, data, check_package)
+
+    def write_for_ever() -> None:
+        for _ in cycle("x"):
+            write_all()
+
+    write_all()
+    span = 2.5 * took(write_all)
+    found: Counter[str] = Counter()
+    for _ in range(kills):
+        killed(write_for_ever, chance.uniform(0.0, span))
+        found[versions.get(target.read_bytes(), "broken")] += 1
+    return found
+
+
+def runs_killed(base: Path, folder: Path, kills: int, chance: random.Random) -> Counter[str]:
+    """Kill whole runs of the command in their second half, in which they write."""
+    target, old = folder / "run.xlsx", base.read_bytes()
+    target.write_bytes(old)
+    run(target)
+    versions = {old: "old", target.read_bytes(): "new"}
+    target.write_bytes(old)
+    span = took(lambda: run(target))
+    found: Counter[str] = Counter()
+    for _ in range(kills):
+        target.write_bytes(old)
+        killed(lambda: run(target), chance.uniform(0.5, 1.2) * span)
+        found[versions.get(target.read_bytes(), "broken")] += 1
+    return found
 
 
 def main() -> None:
@@ -64,23 +106,13 @@ def main() -> None:
     parser.add_argument("base", type=Path)
     parser.add_argument("folder", type=Path)
     parser.add_argument("--kills", type=int, default=100)
+    parser.add_argument("--runs", type=int, default=30)
     parser.add_argument("--seed", type=int, default=8)
     chosen = parser.parse_args()
-    both = versions(chosen.base, chosen.folder)
-    target, chance = chosen.folder / "target.xlsx", random.Random(chosen.seed)
-    actions = [whole(data, target) for data in both]
-    started = time.monotonic()
-    for action in (*actions, *actions, actions[0]):
-        action()
-    span = time.monotonic() - started  # both files twice: a moment within may meet either
-    found: Counter[str] = Counter()
-    for _ in range(chosen.kills):
-        killed(actions, chance.uniform(0.0, span))
-        found[
-            "small" if target.read_bytes() == both[0] else "large" if target.read_bytes() == both[1] else "broken"
-        ] += 1
-    left = len(list(chosen.folder.glob(".heatledger-*.tmp")))
-    print(f"{chosen.kills} kills, {found['broken']} broken files, {dict(found)}, {left} left behind")
+    chance = random.Random(chosen.seed)
+    writing = writing_killed(chosen.base, chosen.folder, chosen.kills, chance)
+    runs = runs_killed(chosen.base, chosen.folder, chosen.runs, chance)
+    print(json.dumps({"writing": writing, "runs": runs}))
 
 
 if __name__ == "__main__":
