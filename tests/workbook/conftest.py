@@ -14,6 +14,7 @@ from zipfile import ZIP_DEFLATED, ZipFile
 
 import pytest
 import xlsxwriter  # type: ignore[import-untyped]
+from lxml import etree
 from openpyxl import Workbook
 from openpyxl.chart import BarChart, LineChart, Reference
 from openpyxl.comments import Comment
@@ -274,3 +275,36 @@ def convert(tmp_path_factory: pytest.TempPathFactory) -> Convert:
         return result
 
     return run
+
+
+ORDER = {
+    "workbook": "fileVersion fileSharing workbookPr workbookProtection bookViews sheets functionGroups "
+    "externalReferences definedNames calcPr oleSize customWorkbookViews pivotCaches smartTagPr smartTagTypes "
+    "webPublishing fileRecoveryPr webPublishObjects extLst",
+    "styleSheet": "numFmts fonts fills borders cellStyleXfs cellXfs cellStyles dxfs tableStyles colors extLst",
+    "worksheet": "sheetPr dimension sheetViews sheetFormatPr cols sheetData sheetCalcPr sheetProtection "
+    "protectedRanges scenarios autoFilter sortState dataConsolidate customSheetViews mergeCells phoneticPr "
+    "conditionalFormatting dataValidations hyperlinks printOptions pageMargins pageSetup headerFooter rowBreaks "
+    "colBreaks customProperties cellWatches ignoredErrors smartTags drawing legacyDrawing legacyDrawingHF picture "
+    "oleObjects controls webPublishItems tableParts extLst",
+}
+"""Order of the children: ECMA-376 Part 1, Annex A (CT_Workbook, CT_Stylesheet, CT_Worksheet)."""
+
+
+def check_order(data: bytes) -> None:
+    """Whether the index and all sheets keep the order of the schema; Excel repairs what does not."""
+    with ZipFile(BytesIO(data)) as archive:
+        roots = [etree.fromstring(archive.read(name)) for name in archive.namelist() if name.lower().endswith(".xml")]
+    heard = [root for root in roots if root.tag in {f"{{{MAIN}}}{name}" for name in ORDER}]
+    assert len(heard) > len(ORDER)
+    for root in heard:
+        order = ORDER[etree.QName(root).localname].split()
+        names = [etree.QName(child).localname for child in root.iterchildren(f"{{{MAIN}}}*")]
+        assert names == sorted(names, key=order.index)
+        assert [name for name in set(names) if names.count(name) > 1] in ([], ["conditionalFormatting"])
+
+
+@pytest.fixture(scope="session")
+def in_order() -> Callable[[bytes], None]:
+    """:func:`check_order` for tests."""
+    return check_order

@@ -14,6 +14,7 @@ import xlsxwriter  # type: ignore[import-untyped]
 from lxml import etree
 from openpyxl import Workbook, load_workbook
 from openpyxl.workbook.defined_name import DefinedName
+from openpyxl.worksheet.hyperlink import Hyperlink
 
 from heatledger.errors import InputError
 from heatledger.workbook import readback
@@ -117,11 +118,53 @@ def test_the_same_run_gives_the_same_file(book: Write, rich_book: bytes, donor: 
 
 
 def test_another_target_leaves_the_original_alone(book: Write, rich_book: bytes, donor: bytes, tmp_path: Path) -> None:
-    path = book(rich_book)
-    graft(path, donor, tmp_path / "other.xlsx")
+    path = book(rich_book, "book.xlsm")
+    graft(path, donor, tmp_path / "other.xlsm")
     assert path.read_bytes() == rich_book
     graft(path, donor, path)
-    assert path.read_bytes() == (tmp_path / "other.xlsx").read_bytes()
+    assert path.read_bytes() == (tmp_path / "other.xlsm").read_bytes()
+
+
+@pytest.mark.parametrize(
+    ("macros", "name", "sentence"),
+    [
+        (
+            True,
+            "copy.xlsx",
+            "copy.xlsx: found the ending '.xlsx'; expected the ending .xlsm of a workbook with macros. "
+            "Give the name copy.xlsm.",
+        ),
+        (
+            False,
+            "copy.xlsm",
+            "copy.xlsm: found the ending '.xlsm'; expected the ending .xlsx of a workbook without macros. "
+            "Give the name copy.xlsx.",
+        ),
+        (
+            False,
+            "copy",
+            "copy: found a name without an ending; expected the ending .xlsx of a workbook without macros. "
+            "Give the name copy.xlsx.",
+        ),
+    ],
+)
+def test_a_copy_that_excel_would_not_open_is_refused(
+    book: Write,
+    plain_book: bytes,
+    rich_book: bytes,
+    donor: bytes,
+    tmp_path: Path,
+    macros: bool,
+    name: str,
+    sentence: str,
+) -> None:
+    path = book(rich_book if macros else plain_book)
+    with pytest.raises(InputError) as caught:
+        graft(path, donor, tmp_path / name)
+    assert str(caught.value) == sentence
+    assert os.listdir(tmp_path) == ["book.xlsx"]
+    graft(path, donor, path)  # its own name is the user's choice
+    graft(path, donor, tmp_path / ("COPY.XLSM" if macros else "COPY.XLSX"))
 
 
 def test_parts_of_the_user_keep_their_date(book: Write, rich_book: bytes, donor: bytes) -> None:
@@ -261,9 +304,19 @@ def test_markers_are_hidden_names_of_the_whole_workbook(book: Write, rich_book: 
     graft(path, donor, path)
     markers = [item for item in workbook_part(path).iter(f"{MAIN}definedName") if "heatledger" in item.get("name", "")]
     assert [(dict(item.attrib), item.text) for item in markers] == [
-        ({"name": "_heatledger_sheet_summary", "hidden": "1"}, "'Summary'!$A$1"),
-        ({"name": "_heatledger_sheet_monthly_need", "hidden": "1"}, "'Monthly need'!$A$1"),
+        ({"name": "_heatledger_sheet_summary", "hidden": "1"}, "'Summary'!$1:$1048576"),
+        ({"name": "_heatledger_sheet_monthly_need", "hidden": "1"}, "'Monthly need'!$1:$1048576"),
     ]
+
+
+def test_markers_of_one_cell_are_known_and_renewed(book: Write, rich_book: bytes, donor: bytes, inject: Inject) -> None:
+    """A name of A1 followed the cell to where it was cut and pasted, and the sheet there was taken for ours."""
+    path = book(rich_book)
+    graft(path, donor, path)
+    new = path.read_bytes()
+    path.write_bytes(inject(new, {}, {"xl/workbook.xml": ("'Summary'!$1:$1048576", "Summary!$A$1")}))
+    graft(path, donor, path)
+    assert names(path)["_heatledger_sheet_summary", None] == "'Summary'!$1:$1048576"
 
 
 def test_a_sheet_of_the_user_with_our_name_is_never_touched(book: Write, donor: bytes) -> None:
@@ -367,7 +420,7 @@ def test_a_deleted_result_sheet_comes_back(book: Write, rich_book: bytes, donor:
     path = book(rich_book)
     graft(path, donor, path)
     gone = inject(
-        path.read_bytes(), {}, {"xl/workbook.xml": ("'Summary'!$A$1</definedName>", "#REF!$A$1</definedName>")}
+        path.read_bytes(), {}, {"xl/workbook.xml": ("'Summary'!$1:$1048576</definedName>", "#REF!</definedName>")}
     )
     path.write_bytes(inject(gone, {}, {"xl/workbook.xml": ('name="Summary"', 'name="Mine now"')}))
     report = graft(path, donor, path)
@@ -461,6 +514,32 @@ def test_names_of_a_whole_donor_are_a_fault_of_ours(book: Write, rich_book: byte
     with pytest.raises(RuntimeError, match=r"^result sheets hold a name of the whole workbook: Total$"):
         graft(path, saved(made), path)
     assert path.read_bytes() == rich_book
+
+
+@pytest.mark.parametrize(
+    ("formula", "told"),
+    [
+        ("='Monthly need'!B3*2", True),
+        ("=Summary!B1", True),
+        ("=[1]Summary!B1", False),
+        ("='[1]Monthly need'!B3", False),
+        ("=My.Summary!B1", False),
+        ('="Summary!"', False),
+    ],
+)
+def test_formulas_that_use_results_are_told_apart(book: Write, donor: bytes, formula: str, told: bool) -> None:
+    made = Workbook()
+    assert made.active is not None
+    made.active["A1"] = formula
+    made.active["A2"] = "to the months"
+    made.active["A2"].hyperlink = Hyperlink(ref="A2", location="'Monthly need'!A1")
+    path = book(saved(made))
+    assert graft(path, donor, path).notes == ()
+    note = (
+        "Formulas on Sheet use result sheets: Excel works them out anew when it opens the file, "
+        "LibreOffice when you press Ctrl+Shift+F9."
+    )
+    assert graft(path, donor, path).notes == ((note,) if told else ())
 
 
 # Odd workbooks
@@ -652,7 +731,7 @@ def test_comments_in_the_styles_are_no_styles(book: Write, rich_book: bytes, don
 @pytest.mark.parametrize(
     ("content", "found"),
     [
-        ("<fonts>" + "<font/>" * 66_001 + "</fonts>", "66,001 fonts"),
+        ("<fonts>" + "<font/>" * 65_491 + "</fonts>", "more than 65,490 fonts"),
         ("<fonts>" + '<font a="1"/>' * 1_000_001 + "</fonts>", "xl/styles.xml"),
     ],
 )

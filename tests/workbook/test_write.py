@@ -66,6 +66,10 @@ def test_a_link_stays_a_link(target: Path) -> None:
     write_whole(link, b"new")
     assert link.is_symlink()
     assert target.read_bytes() == b"new"
+    target.unlink()
+    write_whole(link, b"newer")
+    assert link.is_symlink()
+    assert target.read_bytes() == b"newer"
 
 
 def test_what_is_not_verified_is_not_written(target: Path) -> None:
@@ -136,6 +140,18 @@ def test_a_folder_is_no_target(tmp_path: Path) -> None:
     assert refusal(lambda: write_whole(tmp_path / "jobs", b"new")) == (
         "jobs: found a folder; expected a file name. Give another name with --output."
     )
+
+
+@posix
+def test_a_device_is_no_target(tmp_path: Path) -> None:
+    """Whoever may write everywhere would else put a file in the place of /dev/null."""
+    pipe = tmp_path / "pipe"
+    os.mkfifo(pipe)
+    assert refusal(lambda: write_whole(pipe, b"new")) == (
+        "pipe: found that it cannot be written (it is a device, not a file); expected a place that can be written. "
+        "Give another name with --output."
+    )
+    assert stat.S_ISFIFO(pipe.stat().st_mode)
 
 
 @posix

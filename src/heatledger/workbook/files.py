@@ -115,6 +115,8 @@ def _old_status(target: Path) -> os.stat_result | None:
         return None
     if stat.S_ISDIR(status.st_mode):
         raise IsADirectoryError(errno.EISDIR, os.strerror(errno.EISDIR))
+    if not stat.S_ISREG(status.st_mode):
+        raise OSError(errno.ENODEV, "it is a device, not a file")
     if not status.st_mode & (stat.S_IWUSR | stat.S_IWGRP | stat.S_IWOTH) or not os.access(target, os.W_OK):
         raise PermissionError(errno.EACCES, os.strerror(errno.EACCES))
     return status

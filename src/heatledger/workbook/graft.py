@@ -12,21 +12,29 @@ from collections.abc import Collection, Iterable
 from dataclasses import dataclass, replace
 from functools import partial
 from pathlib import Path
-from xml.sax.saxutils import escape
+from xml.sax.saxutils import unescape
 
+from heatledger.errors import InputError, Problem
 from heatledger.workbook.donor import DonorCopier
 from heatledger.workbook.files import lock_notes, write_whole
 from heatledger.workbook.gate import read_package, readable
 from heatledger.workbook.index import Index
 from heatledger.workbook.package import Package, SheetEntry, dump, main
 from heatledger.workbook.readback import Judged, read_back
-from heatledger.workbook.references import marker_name, quoted, rename_sheets
+from heatledger.workbook.references import marker_name, rename_sheets, sheets_in
 from heatledger.workbook.styles import EMPTY_STYLES, StyleMerger
 
 __all__ = ["GraftReport", "graft"]
 
 _CHAINED_SHEET = re.compile(rb"""\si=["'](\d+)""")
 """Number of a sheet in the list of formulas, which may hold a million entries."""
+_FORMULA = re.compile(rb"<(?:x:)?f(?:\s[^<>]*)?>([^<]+)<")
+"""A formula in a cell; those of sparklines, charts and links have other tags and need no working out."""
+_ENDINGS = {
+    "vnd.openxmlformats-officedocument.spreadsheetml.sheet.main": (".xlsx", "a workbook without macros"),
+    "vnd.ms-excel.sheet.macroEnabled.main": (".xlsm", "a workbook with macros"),
+}
+"""Ending that Excel expects of a workbook, by its content type."""
 _STYLES_TYPE = "application/vnd.openxmlformats-officedocument.spreadsheetml.styles+xml"
 
 
@@ -69,10 +77,11 @@ def graft(original: Path, donor: bytes, target: Path) -> GraftReport:
     Raises
     ------
     InputError
-        If the original is no sound workbook or the target cannot be written;
-        the target is then as it was.
+        If the original is no sound workbook, or the target cannot be written or
+        has the name of another kind of file; the target is then as it was.
     """
     package = read_package(original)
+    _check_ending(package, original, target)
     results = Package.from_bytes(donor)
     with readable(original):
         report = _merge(package, results)
@@ -80,6 +89,23 @@ def graft(original: Path, donor: bytes, target: Path) -> GraftReport:
     judged = Judged(target.name, frozenset(report.titles.values()), package)
     write_whole(target, package.to_bytes(), partial(read_back, original=original, judged=judged))
     return replace(report, notes=notes)
+
+
+def _check_ending(package: Package, original: Path, target: Path) -> None:
+    """Excel opens no copy whose name promises another kind of workbook."""
+    kind = package.content_types()[package.workbook].removesuffix("+xml").rpartition("/")[2]
+    ending, words = _ENDINGS.get(kind, ("", ""))
+    if ending and target.suffix.lower() != ending and not _same(original, target):
+        found = f"the ending '{target.suffix}'" if target.suffix else "a name without an ending"
+        fix = f"Give the name {target.with_suffix(ending).name}."
+        raise InputError([Problem(found, f"the ending {ending} of {words}", fix, file=target.name)])
+
+
+def _same(original: Path, target: Path) -> bool:
+    try:
+        return target.samefile(original)
+    except OSError:  # the target is not there
+        return False
 
 
 def _merge(package: Package, donor: Package) -> GraftReport:
@@ -129,7 +155,7 @@ def _forget(package: Package, index: Index, entries: Collection[SheetEntry]) -> 
     package.remove(_reachable(package, sheets) - _reachable(package, {""}, barred=sheets))
     chain = package.related(package.workbook, "calcChain")
     ids = {(entry.element.get("sheetId") or "").encode() for entry in entries}
-    if chain and not ids.isdisjoint(_CHAINED_SHEET.findall(package.parts[chain])):
+    if chain in package.parts and not ids.isdisjoint(_CHAINED_SHEET.findall(package.parts[chain])):
         index.unrelate("calcChain")  # a cell listed there has to exist; the list is rebuilt on opening
         package.remove({chain})
 
@@ -179,6 +205,7 @@ def _styles_part(package: Package, index: Index) -> str:
     part = package.related(package.workbook, "styles")
     if part is None:
         part = posixpath.join(posixpath.dirname(package.workbook), "styles.xml")
+        part = package.free_name(part) if package.name(part) in package.parts else part
         package.add(part, EMPTY_STYLES, _STYLES_TYPE)
         index.relate("styles", part)
     return part
@@ -210,13 +237,18 @@ def _notes(index: Index, titles: dict[str, str], kept: dict[str, SheetEntry]) ->
 
 def _formula_notes(package: Package, titles: dict[str, str], kept: dict[str, SheetEntry]) -> Iterable[str]:
     """A formula of the user keeps its stored value, since its sheet stays as it is."""
-    ours = {titles[old] for old in kept}
-    needles = [f"{escape(quoted(title))}!".encode() for title in ours]
-    needles += [f"{title}!".encode() for title in ours if title.isalnum()]
+    ours = {titles[old].casefold() for old in kept}
     users = [entry for entry in package.sheets() if entry.kind == "worksheet" and entry.title not in titles.values()]
-    found = [entry.title for entry in users if any(needle in package.parts[entry.part] for needle in needles)]
+    found = [entry.title for entry in users if _uses(package.parts[entry.part], ours)]
     if found:
         yield (
             f"Formulas on {', '.join(found)} use result sheets: Excel works them out anew when it opens the file, "
             "LibreOffice when you press Ctrl+Shift+F9."
         )
+
+
+def _uses(sheet: bytes, titles: set[str]) -> bool:
+    """Whether a formula in a cell of a sheet uses one of these sheets."""
+    formulas = (match[1] for match in _FORMULA.finditer(sheet) if b"!" in match[1])
+    plain = (unescape(formula.decode(errors="replace"), {"&apos;": "'", "&quot;": '"'}) for formula in formulas)
+    return any(not titles.isdisjoint(sheets_in(formula)) for formula in plain)

@@ -127,9 +127,9 @@ class Index:
         self._names.append(new)
 
     def mark(self, donor_title: str, title: str) -> None:
-        """Mark a sheet as ours."""
+        """Mark a sheet as ours: all its rows, since a name of one cell goes along where the cell is cut and pasted."""
         name = etree.SubElement(self._names, main("definedName"), name=marker_name(donor_title), hidden="1")
-        name.text = f"{quoted(title)}!$A$1"
+        name.text = f"{quoted(title)}!$1:$1048576"
 
     def store(self) -> None:
         """Write both parts; formulas are worked out anew when the file is opened."""

@@ -6,7 +6,9 @@ import posixpath
 import re
 from collections.abc import Iterator
 from io import BytesIO
+from itertools import count
 from typing import NamedTuple
+from urllib.parse import quote, unquote
 from zipfile import ZIP_DEFLATED, ZIP_STORED, ZipFile, ZipInfo
 
 from lxml import etree
@@ -37,6 +39,7 @@ OFFICE = "http://schemas.openxmlformats.org/officeDocument/2006/relationships"
 RELATIONS = "http://schemas.openxmlformats.org/package/2006/relationships"
 TYPES = "http://schemas.openxmlformats.org/package/2006/content-types"
 TYPES_PART = "[Content_Types].xml"
+RELATIONS_TYPE = "application/vnd.openxmlformats-package.relationships+xml"
 FIXED_TIME = (1980, 1, 1, 0, 0, 0)
 MOST_MARKS = 2_000_000
 """Tags and attributes of a part that is held as a tree; each takes up to 300 bytes of memory."""
@@ -130,8 +133,9 @@ class Package:
         return entry
 
     def name(self, part: str) -> str:
-        """The part's name as the file spells it; part names do not distinguish case."""
-        return self._names.get(part.lower(), part)
+        """The part's name as the file spells it; part names do not distinguish case, nor "%20" from a space."""
+        spellings = (part, unquote(part), quote(part))
+        return next((self._names[name.lower()] for name in spellings if name.lower() in self._names), part)
 
     def xml(self, part: str) -> Element:
         """Root of an XML part that is small enough for it."""
@@ -188,13 +192,15 @@ class Package:
         return kinds
 
     def add(self, part: str, data: bytes, content_type: str = "") -> None:
-        """Add a part; without a content type its extension has to tell it."""
+        """Add a part; only relations may go without a content type."""
         self.parts[part] = data
         self._names[part.lower()] = part
+        types = self.xml(TYPES_PART)
         if content_type:
-            types = self.xml(TYPES_PART)
             etree.SubElement(types, f"{{{TYPES}}}Override", PartName=f"/{part}", ContentType=content_type)
-            self.parts[TYPES_PART] = dump(types)
+        elif not any(item.get("Extension", "").lower() == "rels" for item in types):
+            types.insert(0, etree.Element(f"{{{TYPES}}}Default", Extension="rels", ContentType=RELATIONS_TYPE))
+        self.parts[TYPES_PART] = dump(types)
 
     def remove(self, parts: set[str]) -> None:
         """Take parts out, with their relations and content types."""
@@ -210,10 +216,8 @@ class Package:
             self._names.pop(name.lower(), None)
 
     def free_name(self, like: str) -> str:
-        """The first numbered part name of this form that is not taken."""
+        """The first numbered part name of this form that is not taken, nor that of its relations."""
         stem, extension = posixpath.splitext(like)
         stem = re.sub(r"\d+$", "", stem)
-        number = 1
-        while f"{stem}{number}{extension}".lower() in self._names:
-            number += 1
-        return f"{stem}{number}{extension}"
+        names = (f"{stem}{number}{extension}" for number in count(1))
+        return next(name for name in names if {name.lower(), self.relations_part(name).lower()}.isdisjoint(self._names))

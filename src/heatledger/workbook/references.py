@@ -7,11 +7,12 @@ from collections.abc import Iterator, Mapping
 
 from heatledger.workbook.package import Element, main, required
 
-__all__ = ["global_markers", "is_marker", "marker_name", "quoted", "rename_sheets", "sheet_of"]
+__all__ = ["global_markers", "is_marker", "marker_name", "quoted", "rename_sheets", "sheet_of", "sheets_in"]
 
 MARKER = "_heatledger_sheet_"
-"""Stem of the hidden workbook-level names; each points at A1 of a sheet that we wrote."""
-_SHEET = re.compile(r""""(?:[^"]|"")*"|'((?:[^']|'')+)'!|([^\W\d][\w.]*)!""")
+"""Stem of the hidden workbook-level names; each points at a sheet that we wrote."""
+_SHEET = re.compile(r""""(?:[^"]|"")*"|'((?:[^']|'')+)'!|(?<![\w.\]])([^\W\d][\w.]*)!""")
+"""A text, which holds no reference, or a sheet name; behind a bracket it belongs to another workbook."""
 
 
 def quoted(title: str) -> str:
@@ -31,6 +32,15 @@ def sheet_of(formula: str) -> str | None:
     """
     match = _SHEET.match(formula)
     return _title(match) if match else None
+
+
+def sheets_in(formula: str) -> set[str]:
+    r"""The sheets of this workbook that a formula uses, casefolded.
+
+    >>> sorted(sheets_in("'Monthly need'!B3+Summary!A1+[1]Notes!A1&\"Zones!\""))
+    ['monthly need', 'summary']
+    """
+    return {(_title(match) or "").casefold() for match in _SHEET.finditer(formula)} - {""}
 
 
 def rename_sheets(formula: str, renames: Mapping[str, str]) -> str:
