@@ -97,6 +97,26 @@ def test_run_into_another_file_leaves_the_workbook_alone(example: Path, tmp_path
     assert written == heatledger.assess(example).to_json()
 
 
+@pytest.mark.parametrize(
+    ("arguments", "sentence"),
+    [
+        (("run", "{0}", "--json", "{0}"), "FILE and --json are the same file: {0}."),
+        (("run", "{0}", "--output", "{1}", "--json", "{1}"), "--output and --json are the same file: {1}."),
+        (("run", "{0}", "--report", "{2}"), "FILE and --report are the same file: {0}."),
+        (("check", "{0}", "--report", "{0}"), "FILE and --report are the same file: {0}."),
+    ],
+)
+def test_no_file_is_written_in_the_place_of_another(tmp_path: Path, arguments: tuple[str, ...], sentence: str) -> None:
+    path, other = tmp_path / "house.xlsx", tmp_path / "other.xlsx"
+    path.write_text("mine")
+    around = tmp_path / ".." / tmp_path.name / "house.xlsx"
+    result = invoke(*(argument.format(path, other, around) for argument in arguments))
+    assert result.exit_code == 2
+    assert result.stderr.endswith(f"Error: {sentence.format(path, other)}\n")
+    assert path.read_text() == "mine"
+    assert not other.exists()
+
+
 def test_a_second_run_gives_the_same_file(example: Path, tmp_path: Path) -> None:
     first, second = tmp_path / "first.xlsx", tmp_path / "second.xlsx"
     assert invoke("run", example, "--output", first).exit_code == 0

@@ -3,9 +3,11 @@
 from __future__ import annotations
 
 import json
+import os
 import sys
-from collections.abc import Callable, Sequence
+from collections.abc import Callable, Mapping, Sequence
 from functools import wraps
+from itertools import combinations
 from pathlib import Path
 from typing import Any, TypeVar, cast
 
@@ -29,6 +31,7 @@ def _problems_to_exit_status(command: Command) -> Command:
 
     @wraps(command)
     def wrapped(*args: Any, **kwargs: Any) -> Any:
+        _check_names(kwargs)
         report: Path | None = kwargs.pop("report", None)
         try:
             return command(*args, **kwargs)
@@ -39,6 +42,15 @@ def _problems_to_exit_status(command: Command) -> Command:
             sys.exit(1)
 
     return cast("Command", wrapped)
+
+
+def _check_names(options: Mapping[str, Any]) -> None:
+    """Refuse a file that is to be written in the place of another one of the same command."""
+    names = {"file": "FILE", "output": "--output", "json_file": "--json", "report": "--report"}
+    given = {name: os.path.realpath(options[key]) for key, name in names.items() if options.get(key)}
+    for one, other in combinations(given, 2):
+        if given[one] == given[other] and (one, other) != ("FILE", "--output"):
+            raise click.UsageError(f"{one} and {other} are the same file: {shown(Path(given[one]))}.")
 
 
 def _write_report(file: Path, problems: Sequence[Problem], report: Path) -> None:

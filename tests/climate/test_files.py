@@ -221,3 +221,13 @@ def test_parts_that_never_add_up_are_noted(tmp_path: Path, write_epw: WriteEpw) 
         "In the weather file global irradiance differs from its direct and diffuse parts by 10.0 % over the year, and "
         "no shift of the hours brings them together. Check its solar data.",
     )
+
+
+def test_a_path_as_typed_on_windows_is_found_everywhere(tmp_path: Path, write_epw: WriteEpw) -> None:
+    (tmp_path / "weather files").mkdir()
+    (tmp_path / write_epw()).rename(tmp_path / "weather files" / "mine.epw")
+    assert open_climate("weather files\\mine.epw", tmp_path).name == "Testville, TS, TST"
+    assert message("weather files\\other.epw", tmp_path) == (
+        "Weather: found no file 'weather files\\other.epw'; expected the path of a weather file. "
+        "Correct the path; it starts from the folder of the workbook."
+    )

@@ -70,19 +70,23 @@ def open_climate(
 def _own_file(weather: str, folder: Path) -> Path:
     name = weather.strip()
     path = folder / name
-    try:
-        is_file, is_folder = path.is_file(), path.is_dir()
-    except (OSError, ValueError):  # longer than a path may be
-        is_file = is_folder = False
-    if is_file:
-        return path
-    if is_folder:
+    for spelling in (path, folder / name.replace("\\", "/")):  # as typed on Windows
+        if _is(Path.is_file, spelling):
+            return spelling
+    if _is(Path.is_dir, path):
         fix = "Add the name of the weather file to the path."
         raise InputError([Problem(f"the folder '{name}'", "a weather file", fix)])
     if path.suffix or "/" in name or "\\" in name:
         fix = "Correct the path; it starts from the folder of the workbook."
         raise InputError([Problem(f"no file '{_shortened(name)}'", "the path of a weather file", fix)])
     raise InputError([_unknown_name(name)])
+
+
+def _is(kind: Callable[[Path], bool], path: Path) -> bool:
+    try:
+        return kind(path)
+    except (OSError, ValueError):  # longer than a path may be
+        return False
 
 
 def _unknown_name(name: str) -> Problem:
