@@ -117,6 +117,35 @@ def test_no_file_is_written_in_the_place_of_another(tmp_path: Path, arguments: t
     assert not other.exists()
 
 
+@pytest.mark.parametrize(
+    ("output", "figures", "sentence"),
+    [
+        (
+            "results.xlsx",
+            "none/house.json",
+            "house.json: found that its folder does not exist; expected an existing folder. "
+            "Make the folder first, or give another name with --json.",
+        ),
+        (
+            "none/results.xlsx",
+            "house.json",
+            "results.xlsx: found that its folder does not exist; expected an existing folder. "
+            "Make the folder first, or give another name with --output.",
+        ),
+        (".", "house.json", "{0}: found a folder; expected a file name. Give another name with --output."),
+    ],
+)
+def test_workbook_and_json_are_written_both_or_none(
+    example: Path, tmp_path: Path, output: str, figures: str, sentence: str
+) -> None:
+    result = invoke("run", example, "--output", tmp_path / output, "--json", tmp_path / figures)
+    assert (result.exit_code, result.stderr) == (
+        1,
+        f"{sentence.format(tmp_path.name)}\n1 problem; nothing was written.\n",
+    )
+    assert list(tmp_path.iterdir()) == []
+
+
 def test_a_second_run_gives_the_same_file(example: Path, tmp_path: Path) -> None:
     first, second = tmp_path / "first.xlsx", tmp_path / "second.xlsx"
     assert invoke("run", example, "--output", first).exit_code == 0

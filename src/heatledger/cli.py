@@ -6,16 +6,20 @@ import json
 import os
 import sys
 from collections.abc import Callable, Mapping, Sequence
+from contextlib import AbstractContextManager, nullcontext
 from functools import wraps
 from itertools import combinations
 from pathlib import Path
-from typing import Any, TypeVar, cast
+from typing import TYPE_CHECKING, Any, TypeVar, cast
 
 import click
 
 from heatledger import __version__
 from heatledger.errors import InputError, Problem
 from heatledger.terminal import Speaker, list_problems, shown, tell
+
+if TYPE_CHECKING:
+    from heatledger.results import Results
 
 __all__ = ["main"]
 
@@ -51,6 +55,16 @@ def _check_names(options: Mapping[str, Any]) -> None:
     for one, other in combinations(given, 2):
         if given[one] == given[other] and (one, other) != ("FILE", "--output"):
             raise click.UsageError(f"{one} and {other} are the same file: {shown(Path(given[one]))}.")
+
+
+def _json(results: Results, file: Path | None) -> AbstractContextManager[None]:
+    """Write the results as JSON once the workbook is written: both or none."""
+    from heatledger.workbook.files import staged
+
+    if file is None:
+        return nullcontext()
+    text = json.dumps(results.to_json(), ensure_ascii=False, indent=1, allow_nan=False)
+    return staged(file, f"{text}\n".encode(), elsewhere="give another name with --json")
 
 
 def _write_report(file: Path, problems: Sequence[Problem], report: Path) -> None:
@@ -149,7 +163,6 @@ def run(file: Path, *, output: Path | None, json_file: Path | None, quiet: bool,
       heatledger run house.xlsx --output house-results.xlsx --json house.json
     """
     from heatledger.assess import assess
-    from heatledger.workbook.files import write_whole
     from heatledger.workbook.graft import graft
     from heatledger.workbook.result_sheets import build_result_sheets
 
@@ -159,10 +172,9 @@ def run(file: Path, *, output: Path | None, json_file: Path | None, quiet: bool,
     results = assess(file)
     say.detail(f"Read {shown(file)} and weather {results.climate.name}.")
     say.progress("Writing the result sheets …")
-    report = graft(file, build_result_sheets(results), target)
+    with _json(results, json_file):
+        report = graft(file, build_result_sheets(results), target)
     if json_file:
-        text = json.dumps(results.to_json(), ensure_ascii=False, indent=1, allow_nan=False)
-        write_whole(json_file, f"{text}\n".encode())
         say.detail(f"Wrote {shown(json_file)}.")
     for done, sheets in (("Added", report.added), ("Replaced", report.replaced), ("Removed", report.dropped)):
         if sheets:

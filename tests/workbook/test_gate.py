@@ -67,6 +67,7 @@ def test_a_file_below_a_file_is_missing(book: Callable[[bytes], Path]) -> None:
 def test_a_folder_is_refused(tmp_path: Path) -> None:
     (tmp_path / "jobs").mkdir()
     assert refusal(tmp_path / "jobs") == f"jobs: found a folder; {WORKBOOK} Give the workbook inside the folder."
+    assert refusal(Path()) == f".: found a folder; {WORKBOOK} Give the workbook inside the folder."
 
 
 def test_a_device_is_refused() -> None:

@@ -140,6 +140,11 @@ def test_a_folder_is_no_target(tmp_path: Path) -> None:
     assert refusal(lambda: write_whole(tmp_path / "jobs", b"new")) == (
         "jobs: found a folder; expected a file name. Give another name with --output."
     )
+    for nameless in (Path("/"), Path()):
+        assert lock_notes(nameless) == ()
+        assert refusal(lambda: write_whole(nameless, b"new")) == (  # noqa: B023
+            f"{nameless}: found a folder; expected a file name. Give another name with --output."
+        )
 
 
 @posix

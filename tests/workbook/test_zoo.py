@@ -34,6 +34,7 @@ if TYPE_CHECKING:
     from tests.conftest import Book, Tell
 
     Convert = Callable[..., Path]
+    KeepsAll = Callable[[Path, bytes], None]
 
 SPACE = "http://schemas.openxmlformats.org/spreadsheetml/2006/main"
 MAIN = f"{{{SPACE}}}"
@@ -193,6 +194,8 @@ class Injected:
     of_book: Mapping[str, str] = field(default_factory=dict)
     in_sheet: str = ""
     """Inserted at the end of the sheet; {0} is the id of the first relation."""
+    of_cells: str = ""
+    """Rows behind the last."""
     in_book: tuple[str, str] = ("</sheets>", "</sheets>")
 
 
@@ -202,6 +205,14 @@ EXTENSION = f'<extLst><ext {X14} uri="{{CCE6A557-97BC-4b89-ADB6-D9C93CAAB3DF}}">
 THREADS = f'xmlns="{MICROSOFT}/spreadsheetml/2018/threadedcomments"'
 
 INJECTED: dict[str, Injected] = {
+    "custom views": Injected(
+        {},
+        in_book=(
+            "</workbook>",
+            '<customWorkbookViews><customWorkbookView name="Print" guid="{AAAAAAAA-0000-0000-0000-000000000001}" '
+            'windowWidth="9" windowHeight="9" activeSheetId="1"/></customWorkbookViews></workbook>',
+        ),
+    ),
     "pivot tables": Injected(
         {
             "xl/pivotTables/pivotTable1.xml": (
@@ -265,6 +276,12 @@ INJECTED: dict[str, Injected] = {
         "Zones!$A$5:$A$6</xm:f></x14:formula1><xm:sqref>C20:C30</xm:sqref></x14:dataValidation></x14:dataValidations>"
         "</ext></extLst>",
     ),
+    "shared formulas and reading aids": Injected(
+        {},
+        of_cells='<row r="40"><c r="A40"><f t="shared" ref="A40:A41" si="7">B1+1</f><v>2</v></c>'
+        '<c r="B40" t="inlineStr"><is><r><t>東</t></r><rPh sb="0" eb="1"><t>ヒガシ</t></rPh></is></c></row>'
+        '<row r="41"><c r="A41"><f t="shared" si="7"/><v>3</v></c></row>',
+    ),
     "printer settings": Injected(
         {"xl/printerSettings/printerSettings1.bin": (f"{SHEETML}.printerSettings", bytes(range(256)))},
         of_sheet={"xl/printerSettings/printerSettings1.bin": f"{OFFICE}/printerSettings"},
@@ -318,6 +335,68 @@ INJECTED: dict[str, Injected] = {
         },
         of_book={"xl/vbaProject.bin": f"{MICROSOFT}/2006/relationships/vbaProject"},
     ),
+    "timelines": Injected(
+        {
+            "xl/timelines/timeline1.xml": (
+                "vnd.ms-excel.timeline+xml",
+                f'<timelines xmlns="{MICROSOFT}/spreadsheetml/2010/11/main"/>',
+            ),
+            "xl/timelineCaches/timelineCache1.xml": (
+                "vnd.ms-excel.timelineCache+xml",
+                f'<timelineCacheDefinition xmlns="{MICROSOFT}/spreadsheetml/2010/11/main" name="N" sourceName="D"/>',
+            ),
+        },
+        of_sheet={"xl/timelines/timeline1.xml": f"{MICROSOFT}/2011/relationships/timeline"},
+        of_book={"xl/timelineCaches/timelineCache1.xml": f"{MICROSOFT}/2011/relationships/timelineCache"},
+    ),
+    "queries": Injected(
+        {
+            "xl/connections.xml": (
+                f"{SHEETML}.connections+xml",
+                f'<connections xmlns="{SPACE}"><connection id="1" name="q" refreshedVersion="6"/></connections>',
+            ),
+            "xl/queryTables/queryTable1.xml": (
+                f"{SHEETML}.queryTable+xml",
+                f'<queryTable xmlns="{SPACE}" name="q" connectionId="1"/>',
+            ),
+            "xl/model/item.data": ("vnd.openxmlformats-officedocument.model+data", bytes(range(99))),
+        },
+        of_sheet={"xl/queryTables/queryTable1.xml": f"{OFFICE}/queryTable"},
+        of_book={
+            "xl/connections.xml": f"{OFFICE}/connections",
+            "xl/model/item.data": f"{MICROSOFT}/2011/relationships/powerPivotData",
+        },
+    ),
+    "controls and objects": Injected(
+        {
+            "xl/activeX/activeX1.xml": (
+                "vnd.ms-office.activeX+xml",
+                f'<ax:ocx xmlns:ax="{MICROSOFT}/2006/activeX" xmlns:r="{OFFICE}" ax:classid="{{1}}" r:id="rId1"/>',
+            ),
+            "xl/activeX/_rels/activeX1.xml.rels": (
+                "",
+                '<Relationships xmlns="http://schemas.openxmlformats.org/package/2006/relationships"><Relationship '
+                f'Id="rId1" Type="{MICROSOFT}/2006/relationships/activeXControlBinary" Target="activeX1.bin"/>'
+                "</Relationships>",
+            ),
+            "xl/activeX/activeX1.bin": ("vnd.ms-office.activeX", bytes(range(200))),
+            "xl/ctrlProps/ctrlProp1.xml": (
+                "vnd.ms-excel.controlproperties+xml",
+                f'<formControlPr xmlns="{MICROSOFT}/spreadsheetml/2009/9/main" objectType="CheckBox"/>',
+            ),
+            "xl/embeddings/oleObject1.bin": (
+                "vnd.openxmlformats-officedocument.oleObject",
+                b"\xd0\xcf\x11\xe0" + bytes(90),
+            ),
+            "xl/embeddings/Microsoft_Excel_Sheet1.xlsx": (f"{SHEETML}.sheet", b"PK\x03\x04" + bytes(90)),
+        },
+        of_sheet={
+            "xl/activeX/activeX1.xml": f"{OFFICE}/control",
+            "xl/ctrlProps/ctrlProp1.xml": f"{OFFICE}/ctrlProp",
+            "xl/embeddings/oleObject1.bin": f"{OFFICE}/oleObject",
+            "xl/embeddings/Microsoft_Excel_Sheet1.xlsx": f"{OFFICE}/package",
+        },
+    ),
     "structure protection": Injected(
         {}, in_book=("<bookViews>", '<workbookProtection workbookPassword="DAA7" lockStructure="1"/><bookViews>')
     ),
@@ -336,6 +415,7 @@ def injected(data: bytes, kinds: Mapping[str, Injected]) -> bytes:
                 _edit(parts, "[Content_Types].xml", "</Types>", override)
         ids = [_relate(parts, sheet, name, relation) for name, relation in kind.of_sheet.items()]
         own = [_relate(parts, "xl/workbook.xml", name, relation) for name, relation in kind.of_book.items()]
+        _edit(parts, sheet, "</sheetData>", f"{kind.of_cells}</sheetData>")
         _edit(parts, sheet, "</worksheet>", kind.in_sheet.replace("{0}", ids[0] if ids else "") + "</worksheet>")
         _edit(parts, "xl/workbook.xml", kind.in_book[0], kind.in_book[1].replace("{0}", own[0] if own else ""))
     if "macros" in kinds:
@@ -441,52 +521,60 @@ def views(data: bytes) -> list[tuple[str, str]]:
     return [(item.get("activeTab", "0"), item.get("firstSheet", "0")) for item in found]
 
 
-def keeps_all(path: Path, data: bytes, tell: Tell) -> None:
+@pytest.fixture
+def keeps_all(tell: Tell, in_order: Callable[[bytes], None]) -> KeepsAll:
     """Calculate a workbook twice and compare it with what it was."""
-    path.write_bytes(data)
-    before, cells = unpacked(data), read_cells(path)
-    run(path)
-    once = path.read_bytes()
-    after = unpacked(once)
-    kept = before.keys() - INDEX_PARTS
-    changed = {name for name in kept if after.get(name) != before[name]}
-    tell("zoo: {} workbooks, {} parts, {} parts changed or lost", 1, len(kept), len(changed))
-    assert changed == set()
-    assert read_cells(path) == cells
-    assert titles(once) == [*titles(data), *RESULTS]
-    assert views(once) == views(data)
-    assert owned_sheets(path) == set(RESULTS)
-    run(path)
-    assert path.read_bytes() == once
+
+    def calculate(path: Path, data: bytes) -> None:
+        path.write_bytes(data)
+        before, cells = unpacked(data), read_cells(path)
+        run(path)
+        once = path.read_bytes()
+        after = unpacked(once)
+        kept = before.keys() - INDEX_PARTS
+        changed = {name for name in kept if after.get(name) != before[name]}
+        tell("zoo: {} workbooks, {} parts, {} parts changed or lost", 1, len(kept), len(changed))
+        assert changed == set()
+        assert read_cells(path) == cells
+        assert titles(once) == [*titles(data), *RESULTS]
+        assert views(once) == views(data)
+        assert owned_sheets(path) == set(RESULTS)
+        in_order(packed({name: after[name] for name in after.keys() - kept}))
+        run(path)
+        assert path.read_bytes() == once
+
+    return calculate
 
 
 @pytest.mark.parametrize("feature", XLSXWRITER, ids=lambda feature: feature.__name__)
 def test_what_xlsxwriter_makes_is_kept(
-    tmp_path: Path, cottage: Book, feature: Callable[[Any, Any], None], tell: Tell
+    tmp_path: Path, cottage: Book, feature: Callable[[Any, Any], None], keeps_all: KeepsAll
 ) -> None:
     data = written(cottage, feature)
     plain = written(cottage)
     assert unpacked(data) != unpacked(plain)
-    keeps_all(tmp_path / "book.xlsx", data, tell)
+    keeps_all(tmp_path / "book.xlsx", data)
 
 
 @pytest.mark.parametrize("kind", INJECTED)
-def test_what_no_python_writer_makes_is_kept(tmp_path: Path, cottage: Book, kind: str, tell: Tell) -> None:
+def test_what_no_python_writer_makes_is_kept(tmp_path: Path, cottage: Book, kind: str, keeps_all: KeepsAll) -> None:
     data = injected(written(cottage), {kind: INJECTED[kind]})
     path = tmp_path / ("book.xlsm" if kind == "macros" else "book.xlsx")
-    keeps_all(path, data, tell)
+    keeps_all(path, data)
 
 
-def test_the_workbook_of_all_kinds_is_kept(tmp_path: Path, cottage: Book, tell: Tell) -> None:
-    keeps_all(tmp_path / "book.xlsm", injected(written(cottage, *XLSXWRITER), INJECTED), tell)
+def test_the_workbook_of_all_kinds_is_kept(tmp_path: Path, cottage: Book, keeps_all: KeepsAll) -> None:
+    keeps_all(tmp_path / "book.xlsm", injected(written(cottage, *XLSXWRITER), INJECTED))
 
 
-def test_what_openpyxl_makes_is_kept(tmp_path: Path, cottage: Book, tell: Tell) -> None:
-    keeps_all(tmp_path / "book.xlsx", by_openpyxl(cottage, tmp_path / "plain.xlsx"), tell)
+def test_what_openpyxl_makes_is_kept(tmp_path: Path, cottage: Book, keeps_all: KeepsAll) -> None:
+    keeps_all(tmp_path / "book.xlsx", by_openpyxl(cottage, tmp_path / "plain.xlsx"))
 
 
 @pytest.mark.parametrize("maker", ["XlsxWriter and by hand", "openpyxl"])
-def test_libreoffice_in_between(tmp_path: Path, cottage: Book, convert: Convert, maker: str, tell: Tell) -> None:
+def test_libreoffice_in_between(
+    tmp_path: Path, cottage: Book, convert: Convert, maker: str, keeps_all: KeepsAll
+) -> None:
     """What LibreOffice saved is kept like any workbook, and after it saved results they are known again."""
     data = {
         "XlsxWriter and by hand": lambda: injected(written(cottage, *XLSXWRITER), INJECTED),
@@ -495,7 +583,7 @@ def test_libreoffice_in_between(tmp_path: Path, cottage: Book, convert: Convert,
     path, folder = tmp_path / "book.xlsx", tmp_path / "office"
     folder.mkdir()
     path.write_bytes(data)
-    keeps_all(tmp_path / "again.xlsx", convert(path, folder).read_bytes(), tell)
+    keeps_all(tmp_path / "again.xlsx", convert(path, folder).read_bytes())
     (folder / "book.xlsx").unlink()
     run(path)
     names = titles(path.read_bytes())
@@ -519,15 +607,19 @@ def _reachable(parts: Mapping[str, bytes], wanted: set[str]) -> set[str]:
     """Parts that these sheets and the workbook use."""
     targets = _relations(parts, "xl/workbook.xml")
     sheets = _sheet_parts(parts)
-    waiting = [part for part in targets.values() if part not in sheets.values()]
-    waiting += [part for title, part in sheets.items() if title in wanted]
-    found: set[str] = set()
+    start = [part for part in targets.values() if part not in sheets.values()]
+    found = _reachable_from(parts, *start, *(part for title, part in sheets.items() if title in wanted))
+    assert len(found) > len(wanted)
+    return found
+
+
+def _reachable_from(parts: Mapping[str, bytes], *start: str) -> set[str]:
+    waiting, found = list(start), set[str]()
     while waiting:
         part = waiting.pop()
         if part not in found:
             found.add(part)
             waiting += _relations(parts, part).values()
-    assert len(found) > len(wanted)
     return found
 
 
@@ -593,6 +685,55 @@ def test_a_formula_on_a_result_follows_the_figures(tmp_path: Path, cottage: Book
         again.unlink()
     assert _january(path) == place
     assert figures[0] != figures[1]
+
+
+def pointers(book: Any, sheet: Any) -> None:
+    """All that may point at result sheets."""
+    book.define_name("Heat", "='Monthly need'!$C$8")
+    chart = book.add_chart({"type": "column"})
+    chart.add_series({"values": "='Monthly need'!$C$8:$N$8"})
+    sheet.insert_chart("H2", chart)
+    sheet.write_url("A10", "internal:'Monthly need'!C8", string="the need")
+    sheet.write_formula("A11", "=SUM('Monthly need'!C8:N8)", None, 0)
+    sheet.write_formula("A12", "=Heat+Summary!B8", None, 0)
+    cold = {"type": "formula", "criteria": "='Monthly need'!$C$8>1", "format": book.add_format({"bold": 1})}
+    sheet.conditional_format("A13", cold)
+    sheet.data_validation("A14", {"validate": "list", "source": "='Monthly need'!$A$8:$A$9"})
+
+
+@pytest.mark.filterwarnings("ignore:Unknown worksheet reference")
+def test_what_points_at_results_keeps_pointing(
+    tmp_path: Path, cottage: Book, convert: Convert, keeps_all: KeepsAll
+) -> None:
+    """Formulas, names, charts, links, conditional formats and dropdowns, also after LibreOffice saved them."""
+    path, folder = tmp_path / "book.xlsx", tmp_path / "office"
+    folder.mkdir()
+    keeps_all(path, written(cottage, pointers))
+    assert _pointing(path) == {"names": 1, "formulas": 3, "links": 1, "conditions": 1, "dropdowns": 1, "charts": 1}
+    again = convert(path, folder)
+    assert _pointing(again) == _pointing(path)
+    run(again)
+    assert _pointing(again) == _pointing(path)
+    assert titles(again.read_bytes()) == titles(path.read_bytes())
+
+
+def _pointing(path: Path) -> dict[str, int]:
+    """How often the user's parts name the sheet Monthly need, and by what."""
+    parts = unpacked(path.read_bytes())
+    survey = _sheet_parts(parts)["Survey"]
+    used = _reachable_from(parts, survey)
+    texts = {name: parts[name].decode().replace("&apos;", "'") for name in (*used, "xl/workbook.xml")}
+    assert not any("#REF!" in text for text in texts.values())
+    at = r"[^<\"]*Monthly need'!"
+    found = {
+        "names": re.findall(rf'name="Heat"[^>]*>{at}', texts["xl/workbook.xml"]),
+        "formulas": re.findall(rf"<f(?:\s[^>]*)?>(?:{at}|Heat\+)", texts[survey]),
+        "links": re.findall(rf'location="{at}', texts[survey]),
+        "conditions": re.findall(rf"<formula>{at}", texts[survey]),
+        "dropdowns": re.findall(rf"<formula1>{at}", texts[survey]),
+        "charts": [name for name in used if "/charts/chart" in name and re.search(rf"<c:f>{at}", texts[name])],
+    }
+    return {kind: len(places) for kind, places in found.items()}
 
 
 def test_formulas_on_results_are_pointed_out(tmp_path: Path, cottage: Book) -> None:

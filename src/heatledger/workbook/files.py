@@ -8,13 +8,13 @@ import re
 import secrets
 import stat
 import time
-from collections.abc import Callable
-from contextlib import suppress
+from collections.abc import Callable, Iterator
+from contextlib import contextmanager, suppress
 from pathlib import Path
 
 from heatledger.errors import InputError, Problem
 
-__all__ = ["create", "lock_notes", "write_whole"]
+__all__ = ["create", "lock_notes", "staged", "write_whole"]
 
 _FULL = {errno.ENOSPC, errno.EFBIG, getattr(errno, "EDQUOT", errno.ENOSPC)}
 _LEFT_BEHIND = re.compile(r"\.heatledger-[0-9a-f]{16}\.tmp")
@@ -55,15 +55,41 @@ def write_whole(
     InputError
         If the target cannot be written; it is then as it was.
     """
+    with staged(target, data, verify, elsewhere):
+        pass
+
+
+@contextmanager
+def staged(
+    target: Path, data: bytes, verify: Callable[[Path], None] | None = None, elsewhere: str = _ELSEWHERE
+) -> Iterator[None]:
+    """As :func:`write_whole`, but the data take their place only when the body of the ``with`` has ended well."""
+    place = Path(os.path.realpath(target))
+    beside = place.parent / f".heatledger-{secrets.token_hex(8)}.tmp"
     try:
-        _write(Path(os.path.realpath(target)), data, verify)
+        with _told(target, elsewhere):
+            _fill(beside, data, verify, _old_status(place))
+        yield
+        with _told(target, elsewhere):
+            os.replace(beside, place)
+    finally:
+        with suppress(OSError):
+            beside.unlink(missing_ok=True)
+    _sync_folder(place.parent)
+    _remove_left_behind(place.parent)
+
+
+@contextmanager
+def _told(target: Path, elsewhere: str) -> Iterator[None]:
+    try:
+        yield
     except OSError as error:
         raise InputError([_problem(target, error, elsewhere)]) from error
 
 
 def lock_notes(target: Path) -> tuple[str, ...]:
     """A sentence for each sign that another program has the target open."""
-    signs = (target.with_name(f"~${target.name}"), target.with_name(f".~lock.{target.name}#"))
+    signs = (target.parent / f"~${target.name}", target.parent / f".~lock.{target.name}#")
     return tuple(
         f"{target.name} seems to be open in another program (there is a file {sign.name}): "
         "close it there without saving, then open it again."
@@ -79,24 +105,15 @@ def _is_there(path: Path) -> bool:
         return False
 
 
-def _write(target: Path, data: bytes, verify: Callable[[Path], None] | None) -> None:
-    old = _old_status(target)
-    beside = target.with_name(f".heatledger-{secrets.token_hex(8)}.tmp")
-    try:
-        with beside.open("xb") as file:
-            file.write(data)
-            file.flush()
-            os.fsync(file.fileno())
-        if verify is not None:
-            verify(beside)
-        if old is not None:
-            _keep_rights(beside, old)
-        os.replace(beside, target)
-    finally:
-        with suppress(OSError):
-            beside.unlink(missing_ok=True)
-    _sync_folder(target.parent)
-    _remove_left_behind(target.parent)
+def _fill(beside: Path, data: bytes, verify: Callable[[Path], None] | None, replaced: os.stat_result | None) -> None:
+    with beside.open("xb") as file:
+        file.write(data)
+        file.flush()
+        os.fsync(file.fileno())
+    if verify is not None:
+        verify(beside)
+    if replaced is not None:
+        _keep_rights(beside, replaced)
 
 
 def _remove_left_behind(folder: Path) -> None:
@@ -139,7 +156,7 @@ def _sync_folder(folder: Path) -> None:
 
 def _problem(target: Path, error: OSError, elsewhere: str) -> Problem:
     found, expected, fix = _causes(error, elsewhere)
-    return Problem(found, expected, fix, file=target.name)
+    return Problem(found, expected, fix, file=target.name or str(target))
 
 
 def _causes(error: OSError, elsewhere: str) -> tuple[str, str, str]:

@@ -72,7 +72,7 @@ def readable(path: Path, sheet: str = "") -> Iterator[None]:
 
 
 def _refusal(path: Path, found: str, fix: str, expected: str = WORKBOOK) -> InputError:
-    return InputError([Problem(found, expected, fix, file=path.name)])
+    return InputError([Problem(found, expected, fix, file=path.name or str(path))])
 
 
 @contextmanager

@@ -95,7 +95,7 @@ def _check_ending(package: Package, original: Path, target: Path) -> None:
     """Excel opens no copy whose name promises another kind of workbook."""
     kind = package.content_types()[package.workbook].removesuffix("+xml").rpartition("/")[2]
     ending, words = _ENDINGS.get(kind, ("", ""))
-    if ending and target.suffix.lower() != ending and not _same(original, target):
+    if ending and target.suffix.lower() != ending and not (target.is_dir() or _same(original, target)):
         found = f"the ending '{target.suffix}'" if target.suffix else "a name without an ending"
         fix = f"Give the name {target.with_suffix(ending).name}."
         raise InputError([Problem(found, f"the ending {ending} of {words}", fix, file=target.name)])
