@@ -412,6 +412,10 @@ def test_two_build_ups_stand_side_by_side(book: Workbook, results: Results) -> N
 
 def test_notes_are_grouped_and_lead_to_their_cells(book: Workbook) -> None:
     sheet = book["Notes"]
+    assert sheet["A3"].value == (
+        "A click on a cell's name leads to the cell. Result sheets are written anew at each run: "
+        "keep remarks of your own on other sheets."
+    )
     groups = [text for text in texts(sheet) if re.search(r": (\d+|none)$", text)]
     assert groups == [
         "Please look at these again: 1",

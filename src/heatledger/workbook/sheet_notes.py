@@ -16,7 +16,10 @@ from heatledger.workbook.pages import print_setup
 __all__ = ["NOTES", "write_notes"]
 
 NOTES = "Notes"
-REMARK = "A click on a cell's name leads to the cell."
+REMARK = (
+    "A click on a cell's name leads to the cell. Result sheets are written anew at each run: "
+    "keep remarks of your own on other sheets."
+)
 GROUPS: dict[NoteKind, str] = {
     "check": "Please look at these again",
     "default": "Defaults used for empty cells",
