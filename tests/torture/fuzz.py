@@ -143,8 +143,8 @@ def _flaw(data: bytes, path: Path) -> str:
 
 
 def _is_index(name: str) -> bool:
-    """Whether a part lists the others or holds the formats: these grow."""
-    return name.endswith((".rels", "[Content_Types].xml", "workbook.xml", "styles.xml"))
+    """Whether a part lists the others or holds the formats, which grow, or is a folder, which is no part."""
+    return name.endswith((".rels", "[Content_Types].xml", "workbook.xml", "styles.xml", "/"))
 
 
 def bases(given: list[Path]) -> list[bytes]:
