@@ -101,6 +101,8 @@ class ZoneResult:
     """In heating mode."""
     solar_gains_cooling: Months = _quantity("Solar gains less sky losses in cooling mode", "kWh")
     internal_gains: Months = _quantity("Internal gains", "kWh")
+    heating_spared: Months = _quantity("Spared by reduced heating hours", "kWh")
+    """Heating need at all hours less that in the hours of use."""
     gain_ratio: Months = _quantity("Gains to losses in heating, γ_H", "-")
     gain_utilisation: Months = _quantity("Utilisation of gains, η_H", "-")
     loss_ratio: Months = _quantity("Gains to losses in cooling, γ_C", "-")

@@ -44,6 +44,28 @@ def test_a_reduced_need_follows_the_ratio_of_gains(building: Callable[[Any], Bui
     assert nights.heating_need[0] == pytest.approx(790.63, abs=0.01)
 
 
+def test_what_reduced_hours_spare_is_a_result_of_its_own(building: Callable[[Any], Building], flat_sky: Any) -> None:
+    """January as above: 1245.5909·(1 − 0.634740) = 454.965 kWh.
+
+    February: loss 140 W/K·20 K·672 h = 1881.6 kWh, gains 1008 kWh, γ 0.535714, a = 3, η = (1 − γ³)/(1 − γ⁴) = 0.922212:
+    need at all hours 952.011 kWh; 1 − 3·15/30·γ·0.5 = 0.598214, so 382.504 kWh are spared.
+    """
+    always = zone_result(building, flat_sky)
+    nights = zone_result(building, flat_sky, setback=15.0, heated_hours=12.0)
+    assert nights.heating_spared[:2].tolist() == pytest.approx([454.965, 382.504], abs=0.001)
+    assert (nights.heating_need + nights.heating_spared).tolist() == pytest.approx(always.heating_need.tolist())
+
+
+def test_only_a_reduced_need_spares(building: Callable[[Any], Building], flat_sky: Any) -> None:
+    """Neither does a mean set-point, whose losses are smaller already, nor a month at the setback."""
+    mean = zone_result(building, flat_sky, setback=18.0, heated_hours=12.0)
+    for other in (zone_result(building, flat_sky), mean):
+        assert other.heating_spared.tolist() == [0.0] * 12
+    empty = zone_result(building, flat_sky, setback=15.0, heated_hours=12.0, months_out_of_use=(1,))
+    assert empty.heating_spared[0] == 0.0
+    assert empty.heating_spared[1] > 300
+
+
 def test_a_slow_zone_keeps_its_set_point(building: Callable[[Any], Building], flat_sky: Any) -> None:
     always = zone_result(building, flat_sky, capacity=400.0)
     nights = zone_result(building, flat_sky, capacity=400.0, setback=15.0, heated_hours=16.0)

@@ -7,6 +7,7 @@ import shutil
 import subprocess
 from dataclasses import fields, replace
 from io import BytesIO
+from itertools import pairwise
 from pathlib import Path
 from typing import Any
 from zipfile import ZipFile
@@ -51,7 +52,7 @@ def _zone(name: str, conditioning: str, area: float) -> ZoneResult:
     losses, gains = 14.0 * area * COLD, solar + internal
     ratio = gains / losses
     utilisation = (1 - ratio**3.4) / (1 - ratio**4.4)
-    need = none if off else losses - utilisation * gains
+    need = none if off else (losses - utilisation * gains) / 1.1
     cooling = 1.8 * area * WARM if conditioning == "heated and cooled" else none
     return ZoneResult(
         name=name,
@@ -66,6 +67,7 @@ def _zone(name: str, conditioning: str, area: float) -> ZoneResult:
         solar_gains=solar,
         solar_gains_cooling=0.8 * solar,
         internal_gains=internal,
+        heating_spared=0.1 * need,
         gain_ratio=ratio,
         gain_utilisation=utilisation,
         loss_ratio=gains / (losses + 2.5 * area),
@@ -252,7 +254,8 @@ def test_monthly_need_holds_every_zone_and_its_sums(book: Workbook, results: Res
 
 def test_monthly_balance_of_the_building_closes(book: Workbook, results: Results) -> None:
     sheet = book["Monthly balance"]
-    rows = range(7, 14)
+    assert numbers(sheet, 6, 2) == pytest.approx(OUTDOOR.tolist())
+    rows = range(8, 15)
     assert [sheet.cell(row, 1).value for row in rows] == [
         "Heating need [kWh]",
         "Internal gains [kWh]",
@@ -265,22 +268,36 @@ def test_monthly_balance_of_the_building_closes(book: Workbook, results: Results
     flows = np.array([numbers(sheet, row, 2, 13) for row in rows], dtype=float)
     assert flows.sum(axis=0).tolist() == [0.0] * 13
     assert flows[0, 12] == pytest.approx(results.building.heating_need.sum())
+    spared = np.sum([zone.heating_spared for zone in results.zones], axis=0)
+    assert flows[3, :12].tolist() == pytest.approx(spared.tolist())
     assert not np.any((flows < 0) & (flows > -0.5))
 
 
 def test_monthly_balance_shows_both_modes_of_a_zone(book: Workbook, results: Results) -> None:
     sheet, zone = book["Monthly balance"], results.zones[1]
     top = row_of(sheet, "Zone 2 · heated and cooled · 67.0 m²")
-    assert numbers(sheet, top + 1, 2) == pytest.approx(OUTDOOR.tolist())
-    shown = "solar_gains internal_gains transmission_heating ventilation_heating gain_utilisation heating_need "
+    shown = "solar_gains internal_gains transmission_heating ventilation_heating gain_utilisation heating_spared "
+    shown += "heating_need heating_season solar_gains_cooling "
     shown += "transmission_cooling ventilation_cooling loss_ratio loss_utilisation cooling_need"
     for field in shown.split():
         row = row_of(sheet, label_of(ZoneResult, field), top)
         assert numbers(sheet, row, 2) == pytest.approx(getattr(zone, field).tolist())
-    for field in ("exponent", "time_constant", "transmission_coefficient", "ventilation_coefficient"):
-        assert sheet.cell(row_of(sheet, label_of(ZoneResult, field), top), 2).value == pytest.approx(
-            getattr(zone, field)
-        )
+    facts = {
+        "heating_use": (18, 2),
+        "cooling_use": (18, 8),
+        "exponent": (18, 14),
+        "time_constant": (19, 2),
+        "heat_capacity": (19, 8),
+        "transmission_coefficient": (19, 14),
+        "ventilation_coefficient": (20, 2),
+        "heating_set_point": (20, 8),
+        "cooling_set_point": (20, 14),
+    }
+    titles = {2: 1, 8: 4, 14: 10}
+    for field, (row, column) in facts.items():
+        value = getattr(zone, field)
+        assert sheet.cell(top + row, titles[column]).value == label_of(ZoneResult, field)
+        assert sheet.cell(top + row, column).value == (value if isinstance(value, str) else pytest.approx(value))
 
 
 def test_a_temperature_has_a_mean_of_the_year_weighted_by_days(book: Workbook) -> None:
@@ -302,12 +319,12 @@ def test_an_unconditioned_zone_shows_temperature_and_factor(book: Workbook) -> N
 def test_element_losses_are_ranked_and_summed(book: Workbook, results: Results) -> None:
     sheet = book["Element losses"]
     count = len(results.element_losses)
-    losses: list[Any] = [sheet.cell(row, 9).value for row in range(25, 25 + count)]
+    losses: list[Any] = [sheet.cell(row, 9).value for row in range(26, 26 + count)]
     assert losses == sorted(losses, reverse=True)
     assert sheet.cell(24, 9).value == "Loss in months with heating [kWh/a]"
-    assert sheet.cell(25 + count, 2).value == "Sum"
-    assert sheet.cell(25 + count, 9).value == pytest.approx(sum(losses))
-    assert sheet.cell(25 + count, 10).value == pytest.approx(100)
+    assert sheet.cell(25, 2).value == "Sum"
+    assert sheet.cell(25, 9).value == pytest.approx(sum(losses))
+    assert sheet.cell(25, 10).value == pytest.approx(100)
 
 
 def test_solar_gains_hold_irradiation_and_gains_of_both_modes(book: Workbook, results: Results) -> None:
@@ -560,6 +577,40 @@ def test_charts_show_their_axes_with_units(data: bytes) -> None:
         assert next(chart.iter(f"{DRAWING}overlay")).get("val") == "0"
 
 
+def test_bars_with_figures_beside_them_have_no_lines_behind(data: bytes) -> None:
+    for chart in _charts(data):
+        labelled = any(found.get("val") == "1" for found in chart.iter(f"{DRAWING}showVal"))
+        assert (chart.find(f".//{DRAWING}valAx/{DRAWING}majorGridlines") is None) == labelled
+
+
+def test_the_balance_differs_in_grey_as_well(data: bytes) -> None:
+    """Neighbours in a stack: relative luminance apart by a third, or a hatch (WCAG 2.1, relative luminance)."""
+    chart = next(chart for chart in _charts(data) if "Losses and gains" in _words(chart))
+    assert [found.get("val") for found in chart.iter(f"{DRAWING}grouping", f"{DRAWING}overlap")] == ["stacked", "100"]
+    fills = [series.find(f"{DRAWING}spPr") for series in chart.iter(f"{DRAWING}ser")]
+    looks = [(fill[0].tag.endswith("pattFill"), _luminance(fill[0])) for fill in fills if fill is not None]
+    assert [hatched for hatched, _ in looks] == [False, False, False, True, False, False, False]
+    for above in (looks[:4], looks[4:]):
+        for (_, one), (hatched, other) in pairwise(above):
+            assert hatched or max(one, other) / min(one, other) > 1.33
+
+
+def _luminance(fill: etree._Element) -> float:
+    code = next(fill.iter("{http://schemas.openxmlformats.org/drawingml/2006/main}srgbClr")).attrib["val"]
+    parts = [int(str(code[place : place + 2]), 16) / 255 for place in (0, 2, 4)]
+    linear = [part / 12.92 if part <= 0.04045 else ((part + 0.055) / 1.055) ** 2.4 for part in parts]
+    return sum(share * part for share, part in zip((0.2126, 0.7152, 0.0722), linear, strict=True))
+
+
+@pytest.mark.parametrize(("zones", "charts"), [(1, 1), (2, 1), (3, 2)])
+def test_zones_are_compared_where_there_are_several(zones: int, charts: int) -> None:
+    """One zone, one with a stair that has no need, and two."""
+    book = build_result_sheets(make_results(zones))
+    titles = [_words(next(chart.iterfind(f"{DRAWING}chart/{DRAWING}title"))) for chart in _charts(book)]
+    shown = [title for title in titles if title in {"Building, month by month", "Zones, year per floor area"}]
+    assert shown == ["Building, month by month", "Zones, year per floor area"][:charts]
+
+
 def test_charts_carry_their_values(data: bytes, results: Results) -> None:
     chart = _charts(data)[0]
     series = chart.find(f".//{DRAWING}ser")
@@ -657,7 +708,7 @@ BUILDINGS = _buildings()
 
 
 @pytest.mark.parametrize("paper", ["A4", "Letter"])
-@pytest.mark.parametrize(("zones", "expected"), [(1, [1, 1, 2, 2, 1, 2, 1]), (25, [1, 3, 26, 3, 5, 2, 1])])
+@pytest.mark.parametrize(("zones", "expected"), [(1, [1, 1, 2, 2, 1, 2, 1]), (25, [1, 3, 14, 3, 6, 2, 1])])
 def test_every_page_is_named_and_numbered(
     rendered: dict[tuple[int, str], list[str]], zones: int, paper: str, expected: list[int]
 ) -> None:
@@ -687,12 +738,21 @@ def test_no_column_is_cut_off(rendered: dict[tuple[int, str], list[str]], paper:
         assert "Dec" in own[-1] or title == "Element losses"
 
 
+@pytest.mark.parametrize("paper", ["A4", "Letter"])
+def test_two_zones_share_a_page_and_none_is_cut(rendered: dict[tuple[int, str], list[str]], paper: str) -> None:
+    balance = [page for page in rendered[25, paper] if "Monthly balance · " in page]
+    first_lines = [len(re.findall(r"number \d+ · heated", page)) for page in balance]
+    last_lines = [page.count("Ventilation coefficient, annual mean [W/K]") for page in balance]
+    assert first_lines == [0, *[2] * 12, 0]
+    assert last_lines == [0, *[2] * 12, 1]
+
+
 @pytest.mark.parametrize("zones", [1, 25])
 def test_sums_add_up_as_printed(rendered: dict[tuple[int, str], list[str]], zones: int) -> None:
     """Read off the paper: months make the year, kinds the sum, shares a hundred; sheets agree."""
     pages = rendered[zones, "A4"]
-    summary = pages[0].splitlines()
-    heating = next(_figures(line) for line in summary if line.startswith("Heating need [kWh]") and "–" not in line[:30])
+    summary = [line.strip() for line in pages[0].splitlines()]
+    heating = next(_figures(line) for line in summary if line.startswith("Heating need [kWh]"))
     assert sum(heating[:12]) == heating[12]
     top = next(place for place, line in enumerate(summary) if line.split()[:1] == ["Loss"])
     total = next(place for place in range(top, len(summary)) if summary[place].startswith("Sum"))
@@ -701,10 +761,10 @@ def test_sums_add_up_as_printed(rendered: dict[tuple[int, str], list[str]], zone
     assert [round(sum(column), 1) for column in zip(*parts, strict=True)] == _figures(summary[total])[:2]
     assert _figures(summary[total])[1] == 100.0
     need = [line for page in pages if "Monthly need · " in page for line in page.splitlines()]
-    building = [_figures(line) for line in need if line.startswith("Building ")]
+    building = [_figures(line) for line in need if line.strip().startswith("Building ")]
     assert building[0][1:14] == heating
     balance = [line for page in pages if "Monthly balance · " in page for line in page.splitlines()]
-    assert next(_figures(line) for line in balance if line.startswith("Heating need [kWh]")) == heating
+    assert next(_figures(line) for line in balance if line.strip().startswith("Heating need [kWh]")) == heating
 
 
 def _figures(line: str) -> list[float]:

@@ -244,6 +244,7 @@ def _zone_result(number: int, model: _HeatModel, heating: ModeBalance, cooling: 
         solar_gains=model.gains.solar[number],
         solar_gains_cooling=model.gains.solar_cooling[number],
         internal_gains=model.gains.internal[number],
+        heating_spared=heating.spared[number],
         gain_ratio=heating.ratio[number],
         gain_utilisation=heating.utilisation[number],
         loss_ratio=cooling.ratio[number],

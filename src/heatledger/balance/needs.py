@@ -35,8 +35,15 @@ class ModeBalance:
     """Gains to losses γ; NaN where there is no loss. [-]"""
     utilisation: NDArray[np.float64]
     """Of gains in heating, of losses in cooling. [-]"""
+    continuous_need: NDArray[np.float64]
+    """As if every zone were conditioned in this mode at all hours. [kWh]"""
     need: NDArray[np.float64]
-    """As if every zone were conditioned in this mode. [kWh]"""
+    """As if every zone were conditioned in this mode, in the hours of its use. [kWh]"""
+
+    @property
+    def spared(self) -> NDArray[np.float64]:
+        """What the hours of use take off the need. [kWh]"""
+        return self.continuous_need - self.need
 
 
 def mode_balance(
@@ -95,7 +102,7 @@ def mode_balance(
         utilisation, need = _cooling(loss, gains, ratio, exponents)
         possible = cooling_possible(loss, gains)
     need = np.where(possible, need, 0.0) if cut_offs else need
-    return ModeBalance(temperatures, transmission, ventilation, ratio, utilisation, need)
+    return ModeBalance(temperatures, transmission, ventilation, ratio, utilisation, need, need)
 
 
 def _heating(

@@ -102,9 +102,13 @@ class Canvas:
         self.sheet.row_dimensions[row].height = points
         return points
 
-    def merged(self, row: int, first: int, last: int, value: object, style: Style = LONG) -> Cell:
-        """Write a value over several columns."""
-        cell = self.put(row, first, value, style)
+    def merged(
+        self, row: int, first: int, last: int, value: object, style: Style = LONG, digits: str = "General"
+    ) -> Cell:
+        """Write a value over several columns, or into one."""
+        cell = self.put(row, first, value, style, digits)
+        if first == last:
+            return cell
         for column in range(first + 1, last + 1):
             self.put(row, column, None, style)
         # Sheet.merge_cells would dress every cell again, at half the time of a summary.
@@ -125,26 +129,34 @@ class Canvas:
         for row in range(first, last + 1):
             self.sheet.row_dimensions[row].height = points
 
-    def keep_together(self, blocks: Sequence[tuple[int, int]], repeated: float = 0.0) -> None:
+    def keep_together(self, blocks: Sequence[tuple[int, int]], repeated_row: int | None = None) -> None:
         """Start a new landscape page before each block of rows that would be cut by the end of one.
 
         Parameters
         ----------
         blocks : sequence of (int, int)
             First and last row of each block, from top to bottom.
-        repeated : float
-            Height of the rows repeated on every page. [pt]
+        repeated_row : int, optional
+            Row of titles that is repeated on every page.
         """
-        page, used = self._page_height(), sum(self._height(row) for row in range(1, blocks[0][0])) if blocks else 0.0
+        repeated = self._height(repeated_row, repeated_row) if repeated_row else 0.0
+        page = self._page_height()
+        used = self._height(1, blocks[0][0] - 1) if blocks else 0.0
         for first, last in blocks:
-            needed = sum(self._height(row) for row in range(first, last + 1))
+            needed = self._height(first, last)
             fits_a_page = repeated + needed <= page or used > 0.7 * page
             if used + needed > page and used > repeated and fits_a_page:
                 self.sheet.row_breaks.append(Break(id=first - 1))
                 used = repeated
-            used = (used + needed) % page
+            used += needed
+            if used > page:
+                used = repeated + (used - page) % (page - repeated)
 
-    def _height(self, row: int) -> float:
+    def _height(self, first: int, last: int) -> float:
+        """Height of rows. [pt]"""
+        return sum(self._row_height(row) for row in range(first, last + 1))
+
+    def _row_height(self, row: int) -> float:
         return float(self.sheet.row_dimensions[row].height or 15.0)
 
     def _page_height(self) -> float:

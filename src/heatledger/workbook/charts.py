@@ -27,6 +27,7 @@ from openpyxl.chart.series import Series, SeriesLabel, XYSeries
 from openpyxl.chart.shapes import GraphicalProperties
 from openpyxl.chart.text import RichText, Text
 from openpyxl.chart.title import Title
+from openpyxl.drawing.fill import ColorChoice, PatternFillProperties
 from openpyxl.drawing.line import LineProperties
 from openpyxl.drawing.spreadsheet_drawing import AnchorMarker, TwoCellAnchor
 from openpyxl.drawing.text import (
@@ -104,11 +105,12 @@ _LETTERS = "ABCDEFGHIJKLMNOPQRSTUVWXYZ"
 
 @dataclass(frozen=True)
 class Bars:
-    """One series: its name or the cell that holds it, its values and its colour."""
+    """One series: its name or the cell that holds it, its values and its colour; hatched to differ in grey as well."""
 
     name: Area | str
     values: Area
     colour: str
+    hatched: bool = False
 
 
 @dataclass(frozen=True)
@@ -218,6 +220,8 @@ def _curve(sheet: Worksheet, curve: Curve, order: int) -> XYSeries:
 
 
 def _label_values(chart: BarChart, digits: str) -> None:
+    """Values beside the bars; lines behind them would cross the figures."""
+    chart.y_axis.majorGridlines = None
     chart.dataLabels = DataLabelList(
         showVal=True, showSerName=False, showCatName=False, showLegendKey=False, showPercent=False, numFmt=digits
     )
@@ -274,11 +278,22 @@ def _series(sheet: Worksheet, categories: Area, bars: Bars, order: int) -> Serie
     series.tx = SeriesLabel(v=name) if isinstance(name, str) else SeriesLabel(strRef=_texts(sheet, name))
     series.cat = AxDataSource(strRef=_texts(sheet, categories))
     series.val = NumDataSource(numRef=_numbers(sheet, bars.values))
-    # A rim in the colour of the paper would cut the axis at every column of no height.
-    rim = LineProperties(solidFill="808080", w=3175) if bars.colour == GREY else LineProperties(noFill=True)
-    series.graphicalProperties = GraphicalProperties(solidFill=bars.colour, ln=rim)
+    series.graphicalProperties = _fill(bars)
     series.invertIfNegative = False
     return series
+
+
+def _fill(bars: Bars) -> GraphicalProperties:
+    if bars.hatched:
+        pattern = PatternFillProperties(prst="wdUpDiag", fgClr=_colour(bars.colour), bgClr=_colour("FFFFFF"))
+        return GraphicalProperties(pattFill=pattern, ln=LineProperties(solidFill=bars.colour, w=3175))
+    # A rim in the colour of the paper would cut the axis at every column of no height.
+    rim = LineProperties(solidFill="808080", w=3175) if bars.colour == GREY else LineProperties(noFill=True)
+    return GraphicalProperties(solidFill=bars.colour, ln=rim)
+
+
+def _colour(code: str) -> ColorChoice:
+    return ColorChoice(srgbClr=cast("Any", code))
 
 
 def _texts(sheet: Worksheet, area: Area) -> StrRef:

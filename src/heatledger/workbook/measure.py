@@ -45,9 +45,41 @@ def digits_for(values: Iterable[float | None]) -> str:
     return f'{digits};-{digits};"{DASH}"'
 
 
+_SIGN_WIDTHS = {
+    sign: width
+    for signs, width in (
+        ("ijl'", 0.4),
+        (" !,./:;·|Ift[]", 0.5),
+        ('()-r`"*', 0.65),
+        ("cksvxyzJ", 0.9),
+        ("ABEKPSVXY&+<=>", 1.2),
+        ("CDHNRUw", 1.3),
+        ("GOQ", 1.4),
+        ("Mm%…—", 1.6),
+        ("W@", 1.8),
+    )
+    for sign in signs
+}
+"""Widths of signs in digits of the body font, rounded to its classes; other small letters are as wide as a digit."""
+
+
 def text_width(text: str) -> float:
-    """Width of a text in column units; East Asian signs count double."""
-    return sum(1.9 if unicodedata.east_asian_width(sign) in "WF" else 1.0 for sign in text)
+    """Width of a text in column units, which are digits of the body font.
+
+    >>> round(text_width("2048"), 1), round(text_width("little"), 1), round(text_width("閲覧"), 1)
+    (4.0, 3.2, 3.6)
+    """
+    return sum(_SIGN_WIDTHS.get(sign) or _other_width(sign) for sign in text)
+
+
+_SPACE = _SIGN_WIDTHS[" "]
+
+
+def _other_width(sign: str) -> float:
+    """East Asian signs are squares of the font's size, capitals of any script wider than its digits."""
+    if unicodedata.east_asian_width(sign) in "WF":
+        return 1.8
+    return 1.25 if sign.isupper() else 1.0
 
 
 def shortened(text: str, most: int) -> str:
@@ -63,8 +95,8 @@ def shortened(text: str, most: int) -> str:
 
 
 def line_count(text: str, width: float, size: float = 10, bold: bool = False) -> int:
-    """Lines a text takes in a column of a width, counted on the safe side."""
-    room = max((width - 1) * 10 / size * (1.0 if bold else 1.1), 1)
+    """Lines a text takes in a column of a width, counted on the safe side: on screens letters run wider."""
+    room = max((width - 1) * 10 / size / (1.12 if bold else 1.04), 1)
     return sum(_wrapped(line, room) for line in text.split("\n"))
 
 
@@ -72,9 +104,9 @@ def _wrapped(line: str, room: float) -> int:
     lines, used = 1, 0.0
     for word in line.split(" "):
         width = text_width(word)
-        if used and used + 1 + width > room:
+        if used and used + _SPACE + width > room:
             lines, used = lines + 1, 0.0
-        used += width + (1 if used else 0)
+        used += width + (_SPACE if used else 0)
         while used > room:
             lines, used = lines + 1, used - room
     return lines

@@ -37,6 +37,7 @@ def print_setup(
     sheet.page_setup.fitToWidth = 1
     sheet.page_setup.fitToHeight = 1 if one_page else 0
     sheet.sheet_properties.pageSetUpPr = PageSetupProperties(fitToPage=True)
+    sheet.print_options.horizontalCentered = True
     margins = sheet.page_margins
     margins.left = margins.right = 0.5
     margins.top, margins.bottom, margins.header, margins.footer = 0.5, 0.75, 0.3, 0.4

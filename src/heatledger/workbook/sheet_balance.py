@@ -12,7 +12,7 @@ from heatledger.results import ClimateResult, GroundFloorResult, Months, Results
 from heatledger.workbook.canvas import Canvas
 from heatledger.workbook.charts import BLUE, GREEN, GREY, ORANGE, SKY, VERMILLION, YELLOW, Area, Bars, add_columns
 from heatledger.workbook.look import BODY, MONTHS, NUMBER, SECTION
-from heatledger.workbook.measure import LINE, digits_for
+from heatledger.workbook.measure import digits_for
 from heatledger.workbook.monthly import conditioned, head, sum_of, year_mean
 from heatledger.workbook.pages import print_setup
 from heatledger.workbook.printed import ROUNDED, energy_digits
@@ -27,14 +27,16 @@ REMARK = (
 HEADER_ROW = 5
 CHART_HEIGHT = 17
 """Rows behind the chart."""
+ROW = 13.0
+"""Height of a row, so that two zones share a page. [pt]"""
 FIRST_MONTH, YEAR = 2, 14
 _Year: TypeAlias = Literal["sum", "mean", "none"]
 """What stands in the column of the year."""
 
 GAINS = ("solar_gains", "internal_gains")
 HEATING = (
-    *("transmission_heating", "ventilation_heating", "gain_ratio", "gain_utilisation", "heating_need"),
-    "heating_season",
+    *("transmission_heating", "ventilation_heating", "gain_ratio", "gain_utilisation"),
+    *("heating_spared", "heating_need", "heating_season"),
 )
 COOLING = (
     "solar_gains_cooling",
@@ -62,14 +64,16 @@ UNCONDITIONED_FACTS = (
 )
 GROUND = ("temperature", "heat_flow_heating", "heat_flow_cooling")
 GROUND_FACTS = (
-    *("area", "characteristic_dimension", "equivalent_thickness", "u_value", "coefficient"),
-    *("inside_periodic_coefficient", "outside_periodic_coefficient", "lag"),
+    *("equivalent_thickness", "area", "characteristic_dimension", "u_value", "coefficient"),
+    *("inside_periodic_coefficient", "lag", "outside_periodic_coefficient"),
 )
+FACT_PLACES = (((1, 1), (2, 3)), ((4, 7), (8, 9)), ((10, 13), (14, 14)))
+"""Columns of title and value of the figures that stand side by side."""
 
 
 def write_monthly_balance(sheet: Worksheet, results: Results) -> None:
     """Write the sheet."""
-    canvas = Canvas(sheet, (46, *[8.5] * 12, 10))
+    canvas = Canvas(sheet, (50, *[9.3] * 12, 12))
     head(canvas, results, sheet.title, REMARK)
     canvas.titles(HEADER_ROW, ("Quantity", *MONTHS, "Year"))
     energy = energy_digits(results)
@@ -77,31 +81,34 @@ def write_monthly_balance(sheet: Worksheet, results: Results) -> None:
     blocks = [(HEADER_ROW + 1, row - 1)]
     for zone in results.zones:
         first = row
-        row = _zone(canvas, first, zone, results.climate, energy) + 1
+        row = _zone(canvas, first, zone, energy)
         blocks.append((first, row - 1))
     for floor in results.ground_floors:
         first = row
-        row = _ground_floor(canvas, first, floor) + 1
+        row = _ground_floor(canvas, first, floor)
         blocks.append((first, row - 1))
-    canvas.keep_together(blocks, repeated=2 * LINE)
+    canvas.keep_together(blocks, HEADER_ROW)
     sheet.freeze_panes = f"B{HEADER_ROW + 1}"
     print_setup(sheet, results.project.project, titles=f"{HEADER_ROW}:{HEADER_ROW}")
 
 
 def _building(canvas: Canvas, row: int, results: Results, energy: str) -> int:
     """Flows into (+) and out of (−) the conditioned zones in heating mode; each month's sum is zero."""
+    outdoor = results.climate.temperature
+    _line(canvas, row, label_of(ClimateResult, "temperature"), _DIGITS["°C"], outdoor, "mean")
+    row += 1
     _section(canvas, row, "Building in heating mode: heat into the conditioned zones (+) and out of them (−)")
     zones = conditioned(results)
     solar, internal = (sum_of(zones, field) for field in GAINS)
     transmission, ventilation = (sum_of(zones, field) for field in HEATING[:2])
     need = results.building.heating_need
-    spared = sum((_spared(zone) for zone in zones), np.zeros(12))
+    spared = sum_of(zones, "heating_spared")
     unused = transmission + ventilation - solar - internal - need - spared
     flows = (
-        ("Heating need [kWh]", need, VERMILLION),
-        ("Internal gains [kWh]", internal, YELLOW),
-        ("Solar gains less sky losses [kWh]", solar, ORANGE),
-        ("Spared by reduced heating hours [kWh]", spared, GREEN),
+        (label_of(ZoneResult, "heating_need"), need, VERMILLION),
+        (label_of(ZoneResult, "internal_gains"), internal, YELLOW),
+        (label_of(ZoneResult, "solar_gains"), solar, ORANGE),
+        (label_of(ZoneResult, "heating_spared"), spared, GREEN),
         ("Transmission [kWh]", -transmission, BLUE),
         ("Ventilation [kWh]", -ventilation, SKY),
         ("Gains not used [kWh]", unused, GREY),
@@ -110,8 +117,8 @@ def _building(canvas: Canvas, row: int, results: Results, energy: str) -> int:
     for place, (title, months, _) in enumerate(flows):
         _line(canvas, first + place, title, energy, months)
     series = [
-        Bars(Area.across(first + place, 1, 1), Area.across(first + place, FIRST_MONTH, FIRST_MONTH + 11), colour)
-        for place, (_, _, colour) in enumerate(flows)
+        Bars(Area.across(row, 1, 1), Area.across(row, FIRST_MONTH, FIRST_MONTH + 11), colour, hatched=months is spared)
+        for row, (_, months, colour) in enumerate(flows, start=first)
     ]
     chart_row = first + len(flows) + 1
     canvas.space(chart_row - 1, chart_row + CHART_HEIGHT)
@@ -126,21 +133,9 @@ def _building(canvas: Canvas, row: int, results: Results, energy: str) -> int:
     return chart_row + CHART_HEIGHT + 1
 
 
-def _spared(zone: ZoneResult) -> Months:
-    """What reduced hours take off the need, in months that have one."""
-    if zone.heating_use != "reduced need":
-        return np.zeros(12)
-    losses = zone.transmission_heating + zone.ventilation_heating
-    held = losses - zone.gain_utilisation * (zone.solar_gains + zone.internal_gains)
-    spared = np.nan_to_num(np.round(held - zone.heating_need), nan=0.0)
-    return np.where(zone.heating_need > 0, np.maximum(spared, 0.0), 0.0)
-
-
-def _zone(canvas: Canvas, row: int, zone: ZoneResult, climate: ClimateResult, energy: str) -> int:
+def _zone(canvas: Canvas, row: int, zone: ZoneResult, energy: str) -> int:
     """One zone; gives the row below it."""
     _section(canvas, row, f"{zone.name} · {zone.conditioning} · {zone.floor_area:,.1f} m²")
-    row += 1
-    _line(canvas, row, label_of(ClimateResult, "temperature"), _DIGITS["°C"], climate.temperature, "mean")
     if zone.conditioning == "unconditioned":
         return _facts(canvas, _lines(canvas, row + 1, zone, UNCONDITIONED, energy), zone, UNCONDITIONED_FACTS)
     row = _lines(canvas, row + 1, zone, GAINS, energy)
@@ -171,17 +166,16 @@ def _lines(canvas: Canvas, row: int, zone: ZoneResult, names: tuple[str, ...], e
 
 
 def _facts(canvas: Canvas, row: int, part: ZoneResult | GroundFloorResult, names: tuple[str, ...]) -> int:
-    """Figures that hold for the whole year, in the first column of numbers."""
-    for name in names:
-        canvas.put(row, 1, label_of(type(part), name), BODY)
-        value = getattr(part, name)
-        if isinstance(value, str):
-            canvas.merged(row, FIRST_MONTH, FIRST_MONTH + 3, value, BODY)
-        else:
-            canvas.numbers(row, FIRST_MONTH, [value])
-        canvas.height(row, 15)
+    """Figures that hold for the whole year, three side by side; gives the row below a gap."""
+    for start in range(0, len(names), len(FACT_PLACES)):
+        for name, (title, place) in zip(names[start:], FACT_PLACES, strict=False):
+            value = getattr(part, name)
+            canvas.merged(row, *title, label_of(type(part), name), _BESIDE if title[0] > 1 else BODY)
+            canvas.merged(row, *place, value, NUMBER, "General" if isinstance(value, str) else digits_for([value]))
+        canvas.height(row, ROW)
         row += 1
-    return row
+    canvas.height(row, 8)
+    return row + 1
 
 
 def _line(
@@ -202,7 +196,7 @@ def _line(
         canvas.put(row, YEAR, None, style)
     else:
         canvas.numbers(row, YEAR, [float(np.sum(months)) if year == "sum" else year_mean(months)], style, digits)
-    canvas.height(row, 15)
+    canvas.height(row, ROW)
 
 
 def _section(canvas: Canvas, row: int, text: str) -> None:
@@ -216,4 +210,6 @@ _UNITS = {item.name: item.metadata["unit"] for item in fields(ZoneResult)}
 _GROUND_UNITS = {item.name: item.metadata["unit"] for item in fields(GroundFloorResult)}
 _HEADING = replace(SECTION, wrap=True)
 _BOLD = replace(BODY, bold=True)
+_BESIDE = replace(BODY, indent=1)
+"""Text that follows a number."""
 _NUMBER_BOLD = replace(NUMBER, bold=True)

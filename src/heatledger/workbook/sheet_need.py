@@ -11,7 +11,7 @@ from heatledger.results import Months, Results, ZoneResult, label_of
 from heatledger.workbook.canvas import Canvas
 from heatledger.workbook.charts import SKY, VERMILLION, Area, Bars, add_bars, add_columns
 from heatledger.workbook.look import BODY, MONTHS, NUMBER, NUMBER_TOTAL, SECTION, TOTAL
-from heatledger.workbook.measure import LINE, text_width
+from heatledger.workbook.measure import text_width
 from heatledger.workbook.monthly import conditioned, head
 from heatledger.workbook.pages import print_setup
 from heatledger.workbook.printed import ROUNDED, energy_digits
@@ -37,7 +37,7 @@ class _Line(NamedTuple):
 def write_monthly_need(sheet: Worksheet, results: Results) -> None:
     """Write the sheet."""
     longest = max((text_width(zone.name) for zone in results.zones), default=0.0)
-    canvas = Canvas(sheet, (min(max(30, 1.1 * longest + 2), 46), 11, *[8.5] * 12, 10, 15))
+    canvas = Canvas(sheet, (min(max(30, 1.1 * longest + 2), 52), 11, *[8.5] * 12, 10, 15))
     head(canvas, results, sheet.title, REMARK)
     zones = conditioned(results)
     header = CHART_ROW + _chart_height(len(zones)) + 1
@@ -46,10 +46,12 @@ def write_monthly_need(sheet: Worksheet, results: Results) -> None:
     canvas.titles(header, ("Zone", label_of(ZoneResult, "floor_area"), *MONTHS, "Year", per_area))
     heating = _block(canvas, header + 1, "heating_need", results)
     cooling = _block(canvas, heating + 2, "cooling_need", results)
-    canvas.keep_together([(header, heating), (heating + 2, cooling)], repeated=2 * LINE)
-    _building_chart(sheet, header, heating, cooling)
-    if zones:
+    canvas.keep_together([(header, heating), (heating + 2, cooling)], header)
+    several = len(zones) > 1
+    _building_chart(sheet, header, heating, cooling, HALF - 1 if several else PER_AREA)
+    if several:
         _zone_chart(sheet, header, heating, min(len(zones), MOST_ZONES_IN_CHART))
+    sheet.freeze_panes = "B1"
     print_setup(sheet, results.project.project, titles=f"{header}:{header}")
 
 
@@ -79,14 +81,14 @@ def _block(canvas: Canvas, row: int, field: str, results: Results) -> int:
     return row
 
 
-def _building_chart(sheet: Worksheet, header: int, heating: int, cooling: int) -> None:
+def _building_chart(sheet: Worksheet, header: int, heating: int, cooling: int, last_column: int) -> None:
     """The building month by month."""
     last = FIRST_MONTH + 11
     series = [
         Bars(Area.across(top, 1, 1), Area.across(total, FIRST_MONTH, last), colour)
         for top, total, colour in ((header + 1, heating, VERMILLION), (heating + 2, cooling, SKY))
     ]
-    place = Area(CHART_ROW, 1, CHART_ROW + CHART_HEIGHT - 1, HALF - 1)
+    place = Area(CHART_ROW, 1, CHART_ROW + CHART_HEIGHT - 1, last_column)
     titles = ("Building, month by month", "kWh per month")
     add_columns(sheet, place, titles, Area.across(header, FIRST_MONTH, last), series)
 

@@ -45,17 +45,24 @@ def write_solar_gains(sheet: Worksheet, results: Results) -> None:
     canvas.titles(HEADER_ROW, titles, text_columns=2)
     openings = results.opening_gains
     digits = energy_digits(results)
-    row = _sums(canvas, HEADER_ROW + 1, "irradiation", openings, _SUN) + 1
+    # Gains come first: their places must not hang on which factors are shown.
+    ends = [_gains(canvas, HEADER_ROW + 1, "gains", openings, digits)]
+    if any(opening.shading_device for opening in openings):
+        ends.append(_gains(canvas, ends[-1] + 1, "gains_cooling", openings, digits))
+    ends.append(_sums(canvas, ends[-1] + 1, "irradiation", openings, _SUN))
     for field, name in FACTORS.items():
         shaded = [opening for opening in openings if getattr(opening, name)]
         if any((getattr(opening, field) < 1).any() for opening in shaded):
-            row = _factors(canvas, row, field, shaded) + 1
-    row = _total(canvas, _sums(canvas, row, "gains", openings, digits), "gains", openings, digits)
-    if any(opening.shading_device for opening in openings):
-        row = _sums(canvas, row + 1, "gains_cooling", openings, digits)
-        _total(canvas, row, "gains_cooling", openings, digits)
+            ends.append(_factors(canvas, ends[-1] + 1, field, shaded))
+    starts = (HEADER_ROW + 1, *(end + 1 for end in ends))
+    canvas.keep_together(list(zip(starts, ends, strict=False)), HEADER_ROW)
     sheet.freeze_panes = f"B{HEADER_ROW + 1}"
     print_setup(sheet, results.project.project, titles=f"{HEADER_ROW}:{HEADER_ROW}")
+
+
+def _gains(canvas: Canvas, row: int, field: str, openings: Sequence[OpeningGains], digits: str) -> int:
+    """A table of gains with the sum of the building; gives the row below it."""
+    return _total(canvas, _sums(canvas, row, field, openings, digits), field, openings, digits)
 
 
 def _sums(canvas: Canvas, row: int, field: str, openings: Sequence[OpeningGains], digits: str) -> int:
