@@ -63,7 +63,7 @@ CHECKS: dict[str, tuple[dict[str, dict[str, Any]], str, str]] = {
     ),
     "few openings": (
         {"Openings": {"width": 1.0}},
-        "Hall: openings are 3 % of the floor area; usual is 5 to 50 %.",
+        "Hall: openings are 3.0 % of the floor area; usual is 5 to 50 %.",
         "Zones!E5",
     ),
     "leaky": ({"Zones": {"leakage": 15.0}}, "Hall: leakage n50 is 15 1/h; usual is 0.3 to 12 1/h.", "Zones!K5"),

@@ -9,7 +9,7 @@ from dataclasses import fields, replace
 from io import BytesIO
 from itertools import pairwise
 from pathlib import Path
-from typing import Any
+from typing import Any, get_args
 from zipfile import ZipFile
 
 import numpy as np
@@ -18,6 +18,7 @@ from lxml import etree
 from openpyxl import Workbook, load_workbook
 from openpyxl.worksheet.worksheet import Worksheet
 
+from heatledger.inputs.rows import ElementRow
 from heatledger.results import (
     BuildingResult,
     BuildUpComparison,
@@ -36,6 +37,7 @@ from heatledger.workbook.guide import CAUTIONS
 from heatledger.workbook.monthly import months_of_need
 from heatledger.workbook.printed import printed
 from heatledger.workbook.result_sheets import RESULT_SHEETS, build_result_sheets
+from heatledger.workbook.sheet_summary import LOSS_GROUPS
 
 MONTHS = ["Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec"]
 OUTDOOR = np.array([1.2, 2.5, 6.0, 10.1, 14.6, 18.2, 19.6, 19.1, 15.4, 10.2, 5.3, 2.1])
@@ -467,6 +469,7 @@ def test_summary_says_what_matters(book: Workbook, results: Results) -> None:
 
 def test_summary_sums_agree(book: Workbook, results: Results) -> None:
     sheet = book["Summary"]
+    assert sheet["B6"].value == pytest.approx(results.building.floor_area)
     heating = row_of(sheet, "Heating need [kWh]")
     assert numbers(sheet, heating, 2) == pytest.approx(results.building.heating_need.tolist())
     assert sheet.cell(heating, 14).value == pytest.approx(results.building.heating_need.sum())
@@ -486,16 +489,108 @@ def test_heat_from_a_warmer_space_keeps_the_shares_at_a_hundred(results: Results
     assert sheet.cell(total, 4).value == pytest.approx(100)
 
 
-def test_a_kind_without_a_group_is_not_lost(results: Results) -> None:
-    odd = replace(results.element_losses[0], kind="well")
-    sheet = load_workbook(BytesIO(build_result_sheets(replace(results, element_losses=(odd,)))))["Summary"]
-    assert sheet.cell(row_of(sheet, "Other"), 2).value == pytest.approx(odd.loss)
+def test_every_kind_of_loss_has_its_line() -> None:
+    elements = get_args(ElementRow.model_fields["kind"].annotation)
+    assert set(LOSS_GROUPS) == {*elements, "opening", "ground floor", "thermal bridge", "air leakage", "ventilation"}
 
 
-def test_places_do_not_move_when_figures_change(results: Results) -> None:
-    zones = tuple(replace(zone, heating_need=zone.heating_need * 3) for zone in results.zones)
-    changed = replace(results, zones=zones, element_losses=results.element_losses[:3], notes=())
+def _needs(*years: float) -> Results:
+    """Heating and cooling of a building of one zone of 60 m², all of it in March."""
+    march = np.eye(12)[2]
+    made = make_results(1)
+    need = dict(zip(("heating_need", "cooling_need"), (year * march for year in years), strict=True))
+    flows = {"transmission_heating": 100.0 * march}
+    zone, building = replace(made.zones[0], **need, **flows), replace(made.building, **need)
+    return replace(made, zones=(zone,), building=building)
+
+
+@pytest.mark.parametrize(
+    ("heating", "cooling", "sentence"),
+    [
+        (
+            *(12_345.0, 678.0),
+            "Each year the building needs 12,345 kWh of heating (205.8 kWh/m²), most in March, and 678 kWh of cooling "
+            "(11.3 kWh/m²), most in March.",
+        ),
+        (
+            *(12_345.0, 0.0),
+            "Each year the building needs 12,345 kWh of heating (205.8 kWh/m²), most in March, and no cooling.",
+        ),
+        (0.0, 0.0, "Each year the building needs no heating, and no cooling."),
+    ],
+)
+def test_summary_begins_with_the_answer(heating: float, cooling: float, sentence: str) -> None:
+    sheet = load_workbook(BytesIO(build_result_sheets(_needs(heating, cooling))))["Summary"]
+    assert sheet["A7"].value == sentence
+    assert sheet["A16"].value is None
+
+
+def test_sentences_show_small_energies_as_the_tables_do() -> None:
+    small = _needs(12.34, 0.0)
+    small = replace(small, zones=(replace(small.zones[0], transmission_heating=np.full(12, 5.0)),))
+    sheet = load_workbook(BytesIO(build_result_sheets(small)))["Summary"]
+    assert sheet["A7"].value.startswith("Each year the building needs 12.3 kWh of heating (0.2 kWh/m²), ")
+    assert sheet["H10"].value == "Mar, 12.3 kWh"
+
+
+def test_summary_names_the_zones_with_the_largest_need(book: Workbook, results: Results) -> None:
+    heating, cooling = (
+        max(results.zones[:-1], key=lambda zone: getattr(zone, field).sum() / zone.floor_area)
+        for field in ("heating_need", "cooling_need")
+    )
+    shares = (heating.heating_need.sum() / heating.floor_area, cooling.cooling_need.sum() / cooling.floor_area)
+    assert book["Summary"]["A16"].value == (
+        f"Largest need per floor area: for heating {heating.name}, {shares[0]:.1f} kWh/m² a year; "
+        f"for cooling {cooling.name}, {shares[1]:.1f} kWh/m² a year."
+    )
+
+
+def test_summary_quotes_one_check_of_each_kind(results: Results) -> None:
+    checks = (
+        *(Note("check", f"Zone {number}: low.", "Zones", f"F{number}") for number in range(5, 9)),
+        Note("check", "Weather: odd.", "Project", "B9"),
+        Note("check", "x" * 300, "Zones", "K6"),
+        Note("check", "Zone 2: leaky.", "Zones", "K7"),
+    )
+    sheet = load_workbook(BytesIO(build_result_sheets(replace(results, notes=checks))))["Summary"]
+    top = row_of(sheet, "What to doubt")
+    assert [sheet.cell(top + place, 1).value for place in range(1, 5)] == [
+        "• Zone 5: low. And 3 more like it.",
+        "• Weather: odd.",
+        f"• {'x' * 189}… And 1 more like it.",
+        "7 checks ask for a second look: see sheet Notes.",
+    ]
+
+
+def test_a_long_note_goes_on_in_the_next_row(results: Results) -> None:
+    names = ", ".join(f"Zone {number}" for number in range(1000))
+    notes = (Note("default", f"Tilt of {names}: empty.", "Envelope", "H6"),)
+    sheet = load_workbook(BytesIO(build_result_sheets(replace(results, notes=notes))))["Notes"]
+    parts: list[Any] = [cell.value for cell in sheet["B"][4:] if cell.value]
+    assert " ".join(parts) == notes[0].text
+    assert len(parts) == 5
+    heights = [sheet.row_dimensions[row].height or 0 for row in range(5, sheet.max_row + 1)]
+    assert max(heights) < 400
+
+
+def test_places_do_not_move_when_figures_change() -> None:
+    """Other needs, another ranking, other checks, a factor that begins to count: what adds up keeps its cells."""
+    results = make_results()
+    zones = tuple(
+        replace(zone, heating_need=zone.heating_need * 3, heating_use="continuous", heating_spared=np.zeros(12))
+        for zone in results.zones
+    )
+    openings = tuple(replace(opening, shading_factor_heating=np.full(12, 0.9)) for opening in results.opening_gains)
+    changed = replace(
+        results, zones=zones, element_losses=results.element_losses[3:0:-1], opening_gains=openings, notes=()
+    )
     before, after = (load_workbook(BytesIO(build_result_sheets(each))) for each in (results, changed))
+    sums: list[Any] = [[book["Element losses"].cell(25, column).value for column in (2, 9)] for book in (before, after)]
+    assert [name for name, _ in sums] == ["Sum", "Sum"]
+    assert sums[1][1] == pytest.approx(sum(loss.loss for loss in results.element_losses[1:4]), abs=0.5)
+    gains = [[cell.value for cell in book["Solar gains"]["A"][:36]] for book in (before, after)]
+    assert gains[0] == gains[1]
+    assert gains[0].count("Building") == 2
     for title in ("Summary", "Monthly need", "Monthly balance"):
         places = [
             {cell.coordinate: cell.value for row in book[title].iter_rows() for cell in row if cell.column == 1}
@@ -506,8 +601,10 @@ def test_places_do_not_move_when_figures_change(results: Results) -> None:
         allowed = {
             "• The floor height of 1.7 m lies outside 2 to 6 m.",
             "Largest single loss",
+            "Largest need per floor area",
             "Main driver of heating",
             "Main driver of cooling",
+            before["Summary"]["A7"].value,
             "1 check asks for a second look",
         }
         assert words <= allowed, title

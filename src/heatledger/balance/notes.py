@@ -107,7 +107,7 @@ def _geometry(building: Building) -> Iterator[Note]:
         share = 100 * glazing[zone.name] / zone.floor_area
         if zone.conditioned and _outside(share, OPENING_SHARE):
             usual = "{:g} to {:g} %".format(*OPENING_SHARE)
-            yield _zone_check(zone, "floor_area", f"openings are {share:.0f} % of the floor area; usual is {usual}.")
+            yield _zone_check(zone, "floor_area", f"openings are {share:.1f} % of the floor area; usual is {usual}.")
 
 
 def _level_roofs(building: Building) -> Iterator[Note]:

@@ -27,7 +27,8 @@ from openpyxl.chart.series import Series, SeriesLabel, XYSeries
 from openpyxl.chart.shapes import GraphicalProperties
 from openpyxl.chart.text import RichText, Text
 from openpyxl.chart.title import Title
-from openpyxl.drawing.fill import ColorChoice, PatternFillProperties
+from openpyxl.drawing.colors import ColorChoice
+from openpyxl.drawing.fill import PatternFillProperties
 from openpyxl.drawing.line import LineProperties
 from openpyxl.drawing.spreadsheet_drawing import AnchorMarker, TwoCellAnchor
 from openpyxl.drawing.text import (
@@ -170,6 +171,7 @@ def add_bars(
     chart.gapWidth = 40
     chart.x_axis.scaling.orientation = "maxMin"
     chart.y_axis.crosses = "max"
+    chart.x_axis.tickLblSkip = 1  # every bar keeps its name
     if len(series) == 1:
         _label_values(chart, digits)
     _place(sheet, chart, place)

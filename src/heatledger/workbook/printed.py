@@ -17,7 +17,7 @@ from heatledger.results import ElementLoss, OpeningGains, Results, ZoneResult
 from heatledger.workbook.measure import DASH
 from heatledger.workbook.monthly import conditioned, sum_of
 
-__all__ = ["ROUNDED", "energy_digits", "in_steps", "printed", "shares_in_tenths"]
+__all__ = ["ROUNDED", "energy_digits", "energy_text", "in_steps", "printed", "shares_in_tenths"]
 
 ROUNDED = "Rounded so that sums add up as printed."
 """Stands on every sheet with sums."""
@@ -57,6 +57,12 @@ def energy_digits(results: Results) -> str:
     """
     digits = {1.0: "#,##0", 0.1: "#,##0.0", 0.01: "#,##0.00"}[_energy_step(results)]
     return f'{digits};-{digits};"{DASH}"'
+
+
+def energy_text(results: Results, energy: float) -> str:
+    """An energy within a sentence, with as many digits as in the tables."""
+    decimals = energy_digits(results).partition(";")[0].partition(".")[2]
+    return f"{energy:,.{len(decimals)}f}"
 
 
 def in_steps(values: ArrayLike, step: float) -> NDArray[np.float64]:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from textwrap import wrap
 
 from openpyxl.worksheet.worksheet import Worksheet
 
@@ -27,6 +28,8 @@ GROUPS: dict[NoteKind, str] = {
     "source": "Sources of data",
 }
 FIRST_ROW = 5
+MOST_OF_A_ROW = 2000
+"""Characters, so that no row is higher than a row can be; names of many rows may make a long note."""
 
 
 def write_notes(sheet: Worksheet, results: Results) -> None:
@@ -45,11 +48,12 @@ def _group(canvas: Canvas, row: int, title: str, notes: Sequence[Note]) -> int:
     canvas.put(row, 1, f"{title}: {len(notes) or 'none'}", SECTION)
     canvas.height(row, LINE * 1.8)
     for note in notes:
-        row += 1
         place = f"{note.sheet}!{note.cell}" if note.cell else note.sheet
-        cell = canvas.put(row, 1, place, LINK if note.sheet else BODY)
+        cell = canvas.put(row + 1, 1, place, LINK if note.sheet else BODY)
         if note.sheet:
             canvas.link(cell, note.sheet, note.cell or "A1")
-        canvas.put(row, 2, note.text, BODY)
-        canvas.fit(row, (place, note.text))
+        for part in wrap(note.text, MOST_OF_A_ROW):
+            row += 1
+            canvas.put(row, 2, part, BODY)
+            canvas.fit(row, (place, part))
     return row + 1
