@@ -265,7 +265,7 @@ def test_monthly_balance_of_the_building_closes(book: Workbook, results: Results
         "Spared by reduced heating hours [kWh]",
         "Transmission [kWh]",
         "Ventilation [kWh]",
-        "Gains not used [kWh]",
+        "Gains not used, and rounding [kWh]",
     ]
     flows = np.array([numbers(sheet, row, 2, 13) for row in rows], dtype=float)
     assert flows.sum(axis=0).tolist() == [0.0] * 13

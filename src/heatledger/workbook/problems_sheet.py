@@ -15,7 +15,7 @@ __all__ = ["PROBLEMS", "build_problems_sheet"]
 
 PROBLEMS = "Problems"
 TITLES = ("Cell", "Column", "Found", "Expected", "How to mend it")
-WIDTHS = (24, 28, 38, 48, 48)
+WIDTHS = (20, 26, 34, 42, 44)
 HEADER_ROW = 4
 
 

@@ -111,7 +111,7 @@ def _building(canvas: Canvas, row: int, results: Results, energy: str) -> int:
         (label_of(ZoneResult, "heating_spared"), spared, GREEN),
         ("Transmission [kWh]", -transmission, BLUE),
         ("Ventilation [kWh]", -ventilation, SKY),
-        ("Gains not used [kWh]", unused, GREY),
+        ("Gains not used, and rounding [kWh]", unused, GREY),
     )
     first = row + 1
     for place, (title, months, _) in enumerate(flows):

@@ -37,7 +37,7 @@ _COLUMNS = [item.name for item in fields(ElementLoss) if item.name != "between_z
 
 def write_element_losses(sheet: Worksheet, results: Results) -> None:
     """Write the sheet."""
-    canvas = Canvas(sheet, (7, 32, 24, 15, 20, 10, 13, 13, 19, 11))
+    canvas = Canvas(sheet, (6, 34, 28, 14, 20, 10, 13, 13, 19, 12))
     head(canvas, results, sheet.title, REMARK)
     canvas.space(4, HEADER_ROW - 1)
     canvas.titles(HEADER_ROW, ("Rank", *(label_of(ElementLoss, name) for name in _COLUMNS)), text_columns=5)

@@ -24,8 +24,8 @@ CHART_ROW, CHART_HEIGHT = 5, 16
 FIRST_MONTH, YEAR, PER_AREA = 3, 15, 16
 HALF = 9
 """First column below the second chart."""
-MOST_COLUMNS, MOST_ZONES_IN_CHART = 8, 30
-"""Zones that a chart of columns, and any chart, can name readably."""
+MOST_COLUMNS, MOST_ZONES_IN_CHART, MOST_ROWS = 8, 30, 36
+"""Zones that a chart of columns, and any chart, can name readably; rows of a page that a chart may cover."""
 
 
 class _Line(NamedTuple):
@@ -56,8 +56,8 @@ def write_monthly_need(sheet: Worksheet, results: Results) -> None:
 
 
 def _chart_height(zones: int) -> int:
-    """Rows that the charts cover: level bars need room for each zone."""
-    return CHART_HEIGHT if zones <= MOST_COLUMNS else max(CHART_HEIGHT, min(zones, 26) + 2)
+    """Rows that the charts cover: level bars need room for each zone, up to a page of them."""
+    return CHART_HEIGHT if zones <= MOST_COLUMNS else max(CHART_HEIGHT, min(zones * 7 // 5, MOST_ROWS))
 
 
 def _block(canvas: Canvas, row: int, field: str, results: Results) -> int:
