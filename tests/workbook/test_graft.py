@@ -163,6 +163,8 @@ def test_a_copy_that_excel_would_not_open_is_refused(
         graft(path, donor, tmp_path / name)
     assert str(caught.value) == sentence
     assert os.listdir(tmp_path) == ["book.xlsx"]
+    with pytest.raises(InputError, match=r"found the ending '\.txt'"):  # longer than a path may be
+        graft(path, donor, tmp_path / f"{'n' * 300}.txt")
     graft(path, donor, path)  # its own name is the user's choice
     graft(path, donor, tmp_path / ("COPY.XLSM" if macros else "COPY.XLSX"))
 

@@ -6,6 +6,7 @@ Sheets of ours carry a hidden workbook-level name and are replaced in their plac
 
 from __future__ import annotations
 
+import os
 import posixpath
 import re
 from collections.abc import Collection, Iterable
@@ -95,17 +96,11 @@ def _check_ending(package: Package, original: Path, target: Path) -> None:
     """Excel opens no copy whose name promises another kind of workbook."""
     kind = package.content_types()[package.workbook].removesuffix("+xml").rpartition("/")[2]
     ending, words = _ENDINGS.get(kind, ("", ""))
-    if ending and target.suffix.lower() != ending and not (target.is_dir() or _same(original, target)):
+    itself = os.path.exists(target) and os.path.samefile(original, target)
+    if ending and target.suffix.lower() != ending and not (itself or os.path.isdir(target)):
         found = f"the ending '{target.suffix}'" if target.suffix else "a name without an ending"
         fix = f"Give the name {target.with_suffix(ending).name}."
         raise InputError([Problem(found, f"the ending {ending} of {words}", fix, file=target.name)])
-
-
-def _same(original: Path, target: Path) -> bool:
-    try:
-        return target.samefile(original)
-    except OSError:  # the target is not there
-        return False
 
 
 def _merge(package: Package, donor: Package) -> GraftReport:
