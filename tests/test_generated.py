@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from pathlib import Path
 
+from heatledger.climate.shipped import shipped_climates
 from heatledger.inputs.prefilled import blank_values, example_values
 from heatledger.inputs.reference import column_reference
 from heatledger.places import shipped_folder
@@ -13,11 +14,11 @@ TEMPLATES: Path = shipped_folder("templates")
 
 
 def test_the_blank_template_is_what_its_generator_writes() -> None:
-    assert (TEMPLATES / "building.xlsx").read_bytes() == build_template(blank_values())
+    assert (TEMPLATES / "building.xlsx").read_bytes() == build_template(blank_values(), shipped_climates())
 
 
 def test_the_example_is_what_its_generator_writes() -> None:
-    assert (TEMPLATES / "example.xlsx").read_bytes() == build_template(example_values())
+    assert (TEMPLATES / "example.xlsx").read_bytes() == build_template(example_values(), shipped_climates())
 
 
 def test_the_column_reference_is_what_its_generator_writes() -> None:

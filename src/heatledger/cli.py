@@ -116,11 +116,13 @@ def new(file: Path, *, example: bool, force: bool) -> None:
       heatledger new house.xlsx
       heatledger new example.xlsx --example
     """
+    from heatledger.climate.shipped import shipped_climates
     from heatledger.inputs.prefilled import blank_values, example_values
     from heatledger.workbook.files import create
     from heatledger.workbook.template import build_template
 
-    create(file, build_template(example_values() if example else blank_values()), force=force)
+    values = example_values() if example else blank_values()
+    create(file, build_template(values, shipped_climates()), force=force)
     click.echo(f"Wrote {shown(file)}.")
 
 

@@ -17,7 +17,8 @@ from openpyxl.utils import range_boundaries
 
 from heatledger.inputs.cells import column_letters
 from heatledger.inputs.columns import Column, SheetRow
-from heatledger.inputs.rows import SHEETS, ProjectRow
+from heatledger.inputs.prefilled import blank_values, example_values
+from heatledger.inputs.rows import SHEETS, ElementRow, ProjectRow
 from heatledger.inputs.workbook_rows import check_rows
 from heatledger.workbook.guide import CAUTIONS
 from heatledger.workbook.reader import read_cells
@@ -25,7 +26,9 @@ from heatledger.workbook.template import build_template
 
 TABLES = [model for model in SHEETS if model is not ProjectRow]
 COLUMNS = [(model, field, column) for model in TABLES for field, column in model.columns().items()]
-SPARE = 60
+SPARE = 300
+LONGEST_PROMPT = 215
+"""A prompt is read at a glance, else not at all. [characters]"""
 VALUES: dict[str, list[dict[str, object]]] = {
     "Project": [{"project": "Mill & Mews", "client": "=Client", "weather": "somewhere", "altitude": 270}],
     "Zones": [
@@ -102,11 +105,12 @@ def test_the_file_is_the_same_for_the_same_values(values: Mapping[str, Sequence[
     assert build_template(values) == build_template(values)
 
 
-def test_no_time_of_writing_is_kept(data: bytes) -> None:
+def test_the_author_is_heatledger_and_no_time_of_writing_is_kept(data: bytes) -> None:
     with ZipFile(BytesIO(data)) as package:
         assert {entry.date_time for entry in package.infolist()} == {(1980, 1, 1, 0, 0, 0)}
-        dates = re.findall(rb">([\d-]+T[\d:]+Z)<", package.read("docProps/core.xml"))
-    assert set(dates) == {b"2000-01-01T00:00:00Z"}
+        properties = package.read("docProps/core.xml")
+    assert set(re.findall(rb">([\d-]+T[\d:]+Z)<", properties)) == {b"2000-01-01T00:00:00Z"}
+    assert re.findall(rb"<dc:creator[^>]*>([^<]*)<", properties) == [b"heatledger"]
 
 
 @pytest.mark.parametrize("model", TABLES)
@@ -115,7 +119,8 @@ def test_every_column_stands_once_with_its_unit_above(book: Workbook, model: typ
     columns = list(model.columns().values())
     assert [cell.value for cell in sheet[5]] == [column.title for column in columns]
     assert [cell.value or "" for cell in sheet[4]] == [column.unit for column in columns]
-    assert (sheet["A1"].value, sheet["A2"].value) == (model.sheet, model.purpose)
+    beside = "B2" if model.sheet in {"Build-ups", "Ground floors"} else "A2"  # column A is repeated on a second page
+    assert (sheet["A1"].value, sheet[beside].value) == (model.sheet, model.purpose)
 
 
 def test_project_lists_labels_values_units_and_notes(book: Workbook) -> None:
@@ -135,7 +140,7 @@ def test_help_stands_beside_the_cell_and_on_the_title(
     found = validation(book, model, field)
     assert found.showInputMessage
     assert found.prompt.startswith(column.help)
-    assert len(found.prompt) <= 255
+    assert len(found.prompt) <= LONGEST_PROMPT
     assert 0 < len(found.promptTitle) <= 32
     note = book[model.sheet].cell(5, position(model, field)).comment
     assert note is not None
@@ -190,6 +195,16 @@ def test_names_come_from_the_hidden_lists(book: Workbook) -> None:
             assert found.errorStyle == "warning"
 
 
+def test_a_name_is_asked_about_only_where_its_sheet_is_filled_in_before(book: Workbook) -> None:
+    order = [model.sheet for model in SHEETS]
+    for model, field, column in COLUMNS:
+        if column.kind == "name":
+            before = order.index(column.names_from) < order.index(model.sheet)
+            assert validation(book, model, field).showErrorMessage == before
+    zone = validation(book, ElementRow, "zone")
+    assert (zone.errorTitle, zone.error) == ("Please check", "Sheet Zones has no such name yet. Keep it?")
+
+
 def test_every_list_has_a_name_of_its_own(book: Workbook) -> None:
     kinds = {(column.names_from, column.choices) for _, _, column in COLUMNS if column.kind == "name"}
     names = {validation(book, model, field).formula1 for model, field, column in COLUMNS if column.kind == "name"}
@@ -208,6 +223,80 @@ def test_project_choices_and_bounds(book: Workbook) -> None:
     assert found["B15"].formula1 == '"open,normal,sheltered"'
 
 
+def test_the_weather_is_offered_and_a_path_may_be_typed() -> None:
+    book = load_workbook(BytesIO(build_template({}, ["Miami FL", "Piedmont IT"])))
+    found = {str(each.sqref): each for each in book["Project"].data_validations.dataValidation}["B9"]
+    assert (found.type, found.formula1) == ("list", '"Miami FL,Piedmont IT,monthly table"')
+    assert not found.showErrorMessage
+
+
+def test_many_climates_go_into_the_hidden_lists() -> None:
+    names = [f"Climate of the place number {number}" for number in range(20)]
+    book = load_workbook(BytesIO(build_template({}, names)))
+    found = {str(each.sqref): each for each in book["Project"].data_validations.dataValidation}["B9"]
+    cells = book.defined_names[found.formula1].attr_text.split("$")[1]
+    assert [cell.value for cell in book["Lists"][cells]][2:23] == [*names, "monthly table"]
+
+
+@pytest.mark.parametrize("model", SHEETS)
+def test_titles_are_kept_from_being_typed_over(book: Workbook, model: type[SheetRow]) -> None:
+    cells = "A4:A23" if model is ProjectRow else f"A5:{column_letters(len(model.columns()))}5"
+    (found,) = [each for each in book[model.sheet].data_validations.dataValidation if str(each.sqref) == cells]
+    still_there = "COLUMN(A4)<>COLUMN($A$4)" if model is ProjectRow else "ROW(A5)<>ROW($A$5)"
+    assert (found.type, found.formula1, found.errorStyle or "stop") == ("custom", still_there, "stop")
+    assert found.showErrorMessage
+    assert found.errorTitle == "Please keep the title"
+    assert found.error == "The titles tell heatledger what stands where. Press Esc, and type in the pale cells."
+
+
+def test_the_cursor_stands_where_the_next_value_belongs(book: Workbook) -> None:
+    """Typing starts at once: on a title it would destroy it."""
+    assert book.active is book["Project"]
+    first_empty = {
+        "Project": "B6",
+        "Zones": "A8",
+        "Usage": "A7",
+        "Materials": "A7",
+        "Build-ups": "A9",
+        "Envelope": "A9",
+    }
+    for model in SHEETS:
+        view: Any = book[model.sheet].sheet_view
+        cell = first_empty.get(model.sheet, "A6")
+        assert {(each.activeCell, each.sqref) for each in view.selection} == {(cell, cell)}
+        assert view.pane.activePane == ("bottomLeft" if cell.startswith("A") else "bottomRight")
+
+
+def test_the_cursor_below_a_long_list_is_in_view() -> None:
+    book = load_workbook(BytesIO(build_template(blank_values())))
+    view: Any = book["Materials"].sheet_view
+    cell = view.selection[-1].activeCell
+    assert cell == f"A{6 + len(blank_values()['Materials'])}"
+    assert view.pane.topLeftCell == f"B{int(cell[1:]) - 10}"
+    assert book["Monthly climate"].sheet_view.selection[-1].activeCell == "B6"
+    assert book["Project"].sheet_view.selection[-1].activeCell == "B4"
+
+
+@pytest.mark.parametrize("model", TABLES)
+def test_rows_are_a_table_so_that_sorting_leaves_the_titles(book: Workbook, model: type[SheetRow]) -> None:
+    (table,) = book[model.sheet].tables.values()
+    assert table.ref == f"A5:{column_letters(len(model.columns()))}{last_row(model.sheet)}"
+    assert [column.name for column in table.tableColumns] == [column.title for column in model.columns().values()]
+    assert table.autoFilter.ref == table.ref
+    assert table.tableStyleInfo is None
+
+
+@pytest.mark.parametrize(("model", "field", "column"), COLUMNS)
+def test_what_is_typed_as_text_stays_text(book: Workbook, model: type[SheetRow], field: str, column: Column) -> None:
+    """Months 5-9 would become a date, and room 1.10 the number 1.1; on every row, also far below."""
+    place = position(model, field)
+    numbers = column.kind in {"number", "integer", "azimuth", "choice"}
+    styles: list[Any] = [book[model.sheet].cell(6, place), book[model.sheet].column_dimensions[column_letters(place)]]
+    assert [style.number_format for style in styles] == ["General" if numbers else "@"] * 2
+    right = column.kind in {"number", "integer", "azimuth"}
+    assert {style.alignment.horizontal for style in styles} == {"right" if right else "left"}
+
+
 def test_titles_are_dark_where_required_and_light_where_not(book: Workbook) -> None:
     for model, field, column in COLUMNS:
         cell = book[model.sheet].cell(5, position(model, field))
@@ -221,8 +310,7 @@ def test_further_spare_rows_show_as_the_sheet_fills(book: Workbook, model: type[
     """A tint of its own would print them, empty as they are."""
     sheet = book[model.sheet]
     first, last = 6 + len(VALUES.get(model.sheet, [])) + 12, last_row(model.sheet)
-    for row in (first, last):
-        assert not any(cell.fill.fill_type or (cell.border.left and cell.border.left.style) for cell in sheet[row])
+    assert sheet.max_row == first - 1
     end = column_letters(len(model.columns()))
     (formula,) = rules(book, model.sheet)[f"A{first}:{end}{last}"]
     assert formula == f"COUNTA($A{first - 5}:${end}${last})>0"
@@ -249,21 +337,33 @@ def test_titles_are_frozen_and_repeated_in_print(book: Workbook, model: type[She
 def test_slips_are_marked_on_all_spare_rows(book: Workbook, model: type[SheetRow], field: str, column: Column) -> None:
     letters = column_letters(position(model, field))
     found = rules(book, model.sheet).get(f"{letters}6:{letters}{last_row(model.sheet)}", [])
-    gaps = [formula for formula in found if formula.startswith(f'AND({letters}6="",COUNTA($A6:')]
-    assert len(gaps) == column.required
-    assert len(found) > len(gaps) or column.kind in {"text", "months"}
+    own = [formula for formula in found if formula.startswith(f'AND({letters}6<>""')]
+    assert len(own) == (column.kind not in {"text", "months"})
+    required = [formula for formula in found if formula == f'AND(${letters}6="",COUNTA({started(model)})>0)']
+    assert len(required) == column.required
+
+
+def started(model: type[SheetRow]) -> str:
+    return f"$A6:${column_letters(len(model.columns()))}6"
+
+
+def test_what_a_project_must_not_leave_empty_is_marked(book: Workbook) -> None:
+    found = rules(book, "Project")
+    assert found["B4"] == ['AND(B4="",COUNTA(B4:B23)>0)']
+    assert found["B9"] == ['AND(B9="",COUNTA(B4:B23)>0)']
 
 
 def test_names_that_stand_twice_are_marked(book: Workbook) -> None:
-    twice = 'AND(A6<>"",SUMPRODUCT(--(TRIM($A$6:$A$67)=TRIM(A6)))>1)'
-    assert twice in rules(book, "Zones")["A6:A67"]
-    assert not [formula for formula in rules(book, "Build-ups")["A6:A68"] if "SUMPRODUCT" in formula]
+    twice = 'AND($A6<>"",SUMPRODUCT(--(TRIM($A$6:$A$307)=TRIM($A6)))>1)'
+    assert twice in rules(book, "Zones")["A6:A307"]
+    assert not [formula for formula in rules(book, "Build-ups")["A6:A308"] if "SUMPRODUCT" in formula]
 
 
 @pytest.mark.parametrize("model", TABLES)
 def test_an_example_stands_in_grey_above_the_units(book: Workbook, model: type[SheetRow]) -> None:
     cells = [cell for cell in book[model.sheet][3] if cell.value]
-    assert cells
+    given = {field for row in example_values()[model.sheet] for field in row}
+    assert len(cells) == len(given)
     assert all(str(cell.value).startswith("e.g. ") for cell in cells)
     assert {(cell.font.italic, cell.font.color.rgb) for cell in cells} == {(True, "0055606A")}
 

@@ -26,7 +26,7 @@ class ProjectRow(SheetRow):
     address: str = text("Address", help="Printed on the summary.")
     weather: str = text(
         "Weather",
-        help="Name of a shipped climate (see: heatledger weather list); or the path of an hourly file as seen from the "
+        help="A shipped climate of the list (heatledger weather list); or the path of an hourly file as seen from the "
         "folder of this workbook (EPW, TMY3, TMY2, PVGIS, NSRDB); or: monthly table, for sheet Monthly climate.",
         required=True,
     )

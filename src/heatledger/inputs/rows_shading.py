@@ -28,9 +28,8 @@ def _skyline(sector: str, words: str) -> Any:
     return number(
         f"Horizon {sector}",
         unit="°",
-        help=f"Height of what stands far off in the {words}, as an angle above the horizontal seen from the middle of "
-        f"the opening; the sector is 45° wide. Height of the obstacle above the middle divided by its distance: 0.27 "
-        f"is 15°, 0.58 is 30°, 1 is 45°.",
+        help=f"Angle up to what stands far off in the {words}, in a sector of 45°, from the middle of the opening. "
+        f"Its height above there divided by its distance: 0.27 is 15°, 0.58 is 30°, 1 is 45°.",
         default=0.0,
         default_note="open",
         ge=0,
@@ -70,16 +69,16 @@ class ObstructionRow(SheetRow):
     )
     left_fin_depth: float = _length(
         "Left fin depth",
-        "How far a fin or a projecting wall on the left, as seen from outside, stands out from the face of the wall. "
-        "It is taken to reach well past the opening above and below. Counts for openings only.",
+        "How far a fin or wall on the left, seen from outside, stands out from the face. It is taken to reach well "
+        "past the opening above and below. Counts for openings only.",
     )
     left_fin_distance: float = _length(
         "Left fin distance", "From the left edge of the opening, as seen from outside, to the fin."
     )
     right_fin_depth: float = _length(
         "Right fin depth",
-        "How far a fin or a projecting wall on the right, as seen from outside, stands out from the face of the wall. "
-        "It is taken to reach well past the opening above and below. Counts for openings only.",
+        "How far a fin or wall on the right, seen from outside, stands out from the face. It is taken to reach well "
+        "past the opening above and below. Counts for openings only.",
     )
     right_fin_distance: float = _length(
         "Right fin distance", "From the right edge of the opening, as seen from outside, to the fin."
@@ -143,8 +142,7 @@ class ShadingDeviceRow(SheetRow):
     )
     months_used: tuple[int, ...] = months(
         "Months",
-        help="Months in which the device is used, such as 5-9 or 11-3. Needed with control by months. Empty with "
-        "control by irradiance: all year.",
+        help="Months in which the device is used, such as 5-9 or 11-3. Needed with control by months.",
         default_note="all year, with control by irradiance",
     )
     used_in_heating: YesNo = choice(

@@ -48,7 +48,7 @@ class Canvas:
             sheet.column_dimensions[column_letters(column + 1)].width = width
         sheet.sheet_view.showGridLines = False
 
-    def put(self, row: int, column: int, value: object, style: Style = BODY, digits: str = "General") -> Cell:
+    def put(self, row: int, column: int, value: object, style: Style = BODY, digits: str = "") -> Cell:
         """Write a value; text stays text, a number that does not exist shows as a dash."""
         cell = cast("Cell", self.sheet.cell(row, column))
         if isinstance(value, str):
@@ -67,10 +67,14 @@ class Canvas:
         known = self._dressed.get((style, digits))
         if known is None:
             style.dress(cell)
-            cell.number_format = digits
+            cell.number_format = digits or cell.number_format
             self._dressed[style, digits] = copy(cell._style)
         else:
             cell._style = copy(known)
+
+    def column(self, column: int, style: Style) -> None:
+        """Dress the cells of a column that nothing is written in."""
+        style.dress(self.sheet.column_dimensions[column_letters(column)])
 
     def numbers(
         self, row: int, column: int, values: Iterable[float | None], style: Style = NUMBER, digits: str = ""

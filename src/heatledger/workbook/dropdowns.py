@@ -3,19 +3,18 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Mapping
-from dataclasses import dataclass
+from collections.abc import Iterable, Mapping
 
 from openpyxl import Workbook
 from openpyxl.workbook.defined_name import DefinedName
 from openpyxl.worksheet.worksheet import Worksheet
 
 from heatledger.inputs.cells import column_letters
-from heatledger.inputs.columns import COMPASS, Column
+from heatledger.inputs.columns import COMPASS, Column, SheetRow
 from heatledger.inputs.rows import SHEETS
-from heatledger.workbook.references import quoted
+from heatledger.workbook.row_marks import Rows
 
-__all__ = ["LISTS", "Source", "key_of", "write_lists"]
+__all__ = ["LISTS", "key_of", "write_lists"]
 
 LISTS = "Lists"
 """Name of the hidden sheet."""
@@ -28,34 +27,17 @@ Key = tuple[str, tuple[str, ...]]
 """What tells lists apart: the sheet whose names they hold and their fixed words."""
 
 
-@dataclass(frozen=True)
-class Source:
-    """Where the names of a sheet stand: its first column, spare rows included."""
-
-    sheet: str
-    first: int
-    last: int
-
-    @property
-    def cells(self) -> str:
-        """The cells as formulas refer to them."""
-        return f"{quoted(self.sheet)}!$A${self.first}:$A${self.last}"
-
-    @property
-    def length(self) -> int:
-        """Number of rows."""
-        return self.last - self.first + 1
-
-
-def write_lists(book: Workbook, sources: Mapping[str, Source]) -> dict[Key, str]:
+def write_lists(book: Workbook, rows: Mapping[type[SheetRow], Rows], further: Iterable[Key]) -> dict[Key, str]:
     """Write every list that a column needs.
 
     Parameters
     ----------
     book : Workbook
         Gets the hidden sheet as its last one.
-    sources : mapping of str to Source
-        Names of each table sheet, by sheet.
+    rows : mapping
+        The rows of each sheet; names stand in its first column.
+    further : iterable of Key
+        Lists that the columns as declared do not know.
 
     Returns
     -------
@@ -64,9 +46,10 @@ def write_lists(book: Workbook, sources: Mapping[str, Source]) -> dict[Key, str]
     """
     sheet = book.create_sheet(LISTS)
     sheet.sheet_state = "hidden"
+    sources = {model.sheet: found for model, found in rows.items()}
     formulas: dict[Key, str] = {}
     counters: dict[str, int] = {}
-    for key in _needed():
+    for key in dict.fromkeys((*_needed(), *further)):
         origin, words = key
         if not origin and words != COMPASS and len(",".join(words)) + 2 <= LONGEST_LIST:
             formulas[key] = '"' + ",".join(words) + '"'
@@ -91,10 +74,10 @@ def _needed() -> list[Key]:
     return list(dict.fromkeys(keys))
 
 
-def _counter(sheet: Worksheet, column: int, source: Source) -> None:
+def _counter(sheet: Worksheet, column: int, source: Rows) -> None:
     """Count up at each name that stands for the first time."""
-    letters, cells, top = column_letters(column), source.cells, _TOP - 1
-    sheet.cell(1, column, f"{source.sheet}: counter")
+    letters, cells, top = column_letters(column), source.names, _TOP - 1
+    sheet.cell(1, column, f"{source.model.sheet}: counter")
     sheet.cell(2, column, 0)
     place, name = f"ROW()-{top}", f"INDEX({cells},ROW()-{top})"
     for row in range(_TOP, _TOP + source.length):
@@ -102,7 +85,7 @@ def _counter(sheet: Worksheet, column: int, source: Source) -> None:
         sheet.cell(row, column, f"={letters}{row - 1}+IFERROR({is_new},0)")
 
 
-def _list(sheet: Worksheet, column: int, key: Key, source: Source | None, counter: int) -> None:
+def _list(sheet: Worksheet, column: int, key: Key, source: Rows | None, counter: int) -> None:
     """Fixed words first, then the names in the order of their sheet."""
     origin, words = key
     sheet.cell(1, column, " + ".join(part for part in (", ".join(words), origin) if part))
@@ -117,7 +100,7 @@ def _list(sheet: Worksheet, column: int, key: Key, source: Source | None, counte
     for place in range(source.length):
         row = _TOP + len(words) + place
         match = f"MATCH(ROW()-{row - place - 1},{count},0)"
-        sheet.cell(row, column, f'=IFERROR(INDEX({source.cells},{match}),"")')
+        sheet.cell(row, column, f'=IFERROR(TRIM(INDEX({source.names},{match})),"")')
 
 
 def _named(book: Workbook, key: Key, column: int) -> str:

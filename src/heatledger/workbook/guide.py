@@ -24,7 +24,8 @@ CAUTIONS = (
 """What a reader of any figure has to know; printed on the guide and on the summary."""
 
 STEPS = (
-    "Fill in the sheets from left to right: each dropdown offers the names typed on the sheets before it.",
+    "Fill in the sheets from left to right. The dropdowns offer the names typed on the other sheets; a name that is "
+    "not there yet stands in bold orange until it is.",
     "Start with Project and Zones. One zone is a space, or several, with one set-point and one use.",
     "Usage and Materials come filled in. Change the rows or add your own.",
     "Then the build-ups and glazed units, the envelope with its openings, the ground floors and thermal bridges.",
@@ -49,8 +50,8 @@ _SAMPLES: tuple[tuple[Style, str, str], ...] = (
     (Style(italic=True, size=8.5, colour=SMALL.colour), "e.g. 0.77", "An example, above the unit; nothing there is "
      "read."),
     (Style(bold=True, colour=SLIP, border=INPUT.border, fill=INPUT.fill), "1,2", "Bold orange: text where a number is "
-     "expected, a number outside its limits, a name that is not in the list or stands twice, openings that together "
-     "are larger than their element."),
+     "expected, a number outside its limits or typed in another unit, a name that is not in the list or stands twice, "
+     "two cells that contradict each other, openings that together are larger than their element."),
     (Style(border=INPUT.border, fill=MISSING), "", "Orange cell: this row is used, and the cell must not stay empty."),
 )  # fmt: skip
 

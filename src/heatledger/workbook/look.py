@@ -7,6 +7,7 @@ from typing import Literal
 
 from openpyxl.cell.cell import Cell
 from openpyxl.styles import Alignment, Border, Font, PatternFill, Side
+from openpyxl.worksheet.dimensions import ColumnDimension
 
 __all__ = [
     "BODY",
@@ -58,8 +59,8 @@ class Style:
     indent: int = 0
     number_format: str = ""
 
-    def dress(self, cell: Cell) -> None:
-        """Put the style on a cell."""
+    def dress(self, cell: Cell | ColumnDimension) -> None:
+        """Put the style on a cell, or on the empty cells of a column."""
         cell.font = Font(
             name=FONT, size=self.size, bold=self.bold, italic=self.italic, underline=self.underline, color=self.colour
         )

@@ -17,8 +17,10 @@ from openpyxl.writer.excel import ExcelWriter
 from heatledger.workbook.look import FONT
 from heatledger.workbook.measure import clean_text
 
-__all__ = ["book_bytes", "new_book", "print_setup"]
+__all__ = ["CREATOR", "book_bytes", "new_book", "print_setup"]
 
+CREATOR = "heatledger"
+"""Author of what we write, in the properties of a file and on its notes."""
 FIXED_TIME = (1980, 1, 1, 0, 0, 0)
 _DATES = re.compile(rb"(<dcterms:(created|modified)[^>]*>)[^<]*")
 
@@ -63,6 +65,7 @@ def new_book() -> Workbook:
     plain = Font(name=FONT, size=10, family=2)
     book._fonts[0] = plain
     book._named_styles["Normal"].font = plain
+    book.properties.creator = CREATOR
     return cast("Workbook", book)
 
 

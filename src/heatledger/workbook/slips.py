@@ -2,28 +2,23 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from dataclasses import dataclass
 
-from openpyxl import Workbook
 from openpyxl.formatting.rule import Rule
 from openpyxl.styles import Border, Font, PatternFill, Side
 from openpyxl.styles.differential import DifferentialStyle
-from openpyxl.workbook.defined_name import DefinedName
 from openpyxl.worksheet.worksheet import Worksheet
 
 from heatledger.inputs.cells import column_letters
-from heatledger.inputs.columns import Column, SheetRow
-from heatledger.inputs.rows import ElementRow, OpeningRow
-from heatledger.workbook.dropdowns import Source
+from heatledger.inputs.columns import Column
 from heatledger.workbook.look import RULE, TINT
-from heatledger.workbook.references import quoted
+from heatledger.workbook.row_marks import Rows, gaps, slips
 
-__all__ = ["MISSING", "SLIP", "Field", "limits", "mark_rows", "mark_slips", "name_areas", "show_as_filled"]
+__all__ = ["MISSING", "SLIP", "Field", "limits", "mark_gaps", "mark_rows", "mark_slips", "show_as_filled"]
 
 SLIP, MISSING = "D55E00", "F4B183"
 """Colour of the letters of a slip, in bold; of a cell that must not stay empty."""
-ELEMENTS, AREAS = "element_names", "element_areas"
-"""Names of two columns of sheet Envelope; conditional formats reach other sheets through names."""
 MOST_OF_A_FORMULA = 1000
 """Characters; longer lists of words are left to the validation."""
 _JUST = 1e-9
@@ -60,29 +55,17 @@ def mark_slips(sheet: Worksheet, field: Field) -> None:
         _mark(sheet, field.cells, slip, _SLIP)
 
 
-def mark_rows(sheet: Worksheet, model: type[SheetRow], first: int, last: int) -> None:
-    """Mark what a row shows only as a whole: gaps, names that stand twice, openings larger than their element."""
-    columns = list(model.columns().values())
-    row = f"$A{first}:${column_letters(len(columns))}{first}"
-    for place, column in enumerate(columns, start=1):
-        if column.required:
-            letters = column_letters(place)
-            formula = f'AND({letters}{first}="",COUNTA({row})>0)'
-            _mark(sheet, f"{letters}{first}:{letters}{last}", formula, _MISSING)
-    cells = f"A{first}:A{last}"
-    if model.unique:
-        names = f"$A${first}:$A${last}"
-        _mark(sheet, cells, f'AND(A{first}<>"",SUMPRODUCT(--(TRIM({names})=TRIM(A{first})))>1)', _SLIP)
-    if model is OpeningRow:
-        _mark(sheet, cells, _too_large(first, last), _SLIP)
+def mark_rows(sheet: Worksheet, rows: Rows) -> None:
+    """Mark what a row shows only as a whole."""
+    for found, style in ((gaps, _MISSING), (slips, _SLIP)):
+        for field, formula in found(rows.model):
+            _mark(sheet, rows.column(field), rows.formula(formula), style)
 
 
-def name_areas(book: Workbook, elements: Source) -> None:
-    """Name the columns of the elements that formulas on other sheets need."""
-    for name, field in ((ELEMENTS, "name"), (AREAS, "area")):
-        letters = _letters(ElementRow, field)
-        cells = f"{quoted(elements.sheet)}!${letters}${elements.first}:${letters}${elements.last}"
-        book.defined_names[name] = DefinedName(name, attr_text=cells)
+def mark_gaps(sheet: Worksheet, cells: Sequence[str], record: str) -> None:
+    """Mark the required cells of a record that is filled in elsewhere."""
+    for cell in cells:
+        _mark(sheet, cell, f'AND({cell}="",COUNTA({record})>0)', _MISSING)
 
 
 def show_as_filled(sheet: Worksheet, columns: int, first: int, last: int) -> None:
@@ -105,7 +88,8 @@ def _slip(field: Field) -> str:
         case "number" | "integer":
             low, high = limits(field.column)
             whole = f",{cell}<>INT({cell})" if field.column.kind == "integer" else ""
-            return f'AND({cell}<>"",IF(ISTEXT({cell}),TRUE,OR({cell}<{low:.15g},{cell}>{high:.15g}{whole})))'
+            share = f",AND({cell}>0,{cell}{_fraction(field.column)})" if field.column.unit == "%" else ""
+            return f'AND({cell}<>"",IF(ISTEXT({cell}),TRUE,OR({cell}<{low:.15g},{cell}>{high:.15g}{whole}{share})))'
         case "azimuth":
             return (
                 f'AND({cell}<>"",IF(ISTEXT({cell}),ISNA(MATCH(TRIM({cell}),{field.list},0)),OR({cell}<0,{cell}>360)))'
@@ -116,19 +100,12 @@ def _slip(field: Field) -> str:
             words = ",".join(f'TRIM({cell})="{word}"' for word in field.column.choices)
             formula = f'AND({cell}<>"",NOT(OR({words})))'
             return formula if len(formula) <= MOST_OF_A_FORMULA else ""
-        case "months" | "text":
+        case "months":  # such as a date that the program made of 5-9
+            return f"AND(ISNUMBER({cell}),OR({cell}<1,{cell}>12))"
+        case "text":
             return ""
 
 
-def _letters(model: type[SheetRow], field: str) -> str:
-    return column_letters(list(model.columns()).index(field) + 1)
-
-
-def _too_large(first: int, last: int) -> str:
-    """The openings of an element together are larger than it is; an empty number counts as one."""
-    element, number, width, height = (_letters(OpeningRow, field) for field in ("element", "count", "width", "height"))
-    whole = {letters: f"${letters}${first}:${letters}${last}" for letters in (element, number, width, height)}
-    own = f"${element}{first}"
-    count = f'({whole[number]}+({whole[number]}=""))'
-    area = f"SUMPRODUCT(({whole[element]}={own})*{count}*{whole[width]}*{whole[height]})"
-    return f'AND({own}<>"",IFERROR({area}>INDEX({AREAS},MATCH(TRIM({own}),{ELEMENTS},0)),FALSE))'
+def _fraction(column: Column) -> str:
+    """Spreadsheet programs store 78 % as 0.78; where shares are small, 1 means one percent."""
+    return "<1" if column.small_share else "<=1"

@@ -4,48 +4,54 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 from dataclasses import replace
+from typing import Literal
 
-from openpyxl.comments import Comment
 from openpyxl.styles import Border
-from openpyxl.worksheet.datavalidation import DataValidation
+from openpyxl.worksheet.table import Table
 from openpyxl.worksheet.worksheet import Worksheet
 
 from heatledger.inputs.cells import column_letters, reference
 from heatledger.inputs.columns import Column, SheetRow, plain
 from heatledger.inputs.prefilled import example_values
-from heatledger.inputs.rows import SHEETS, MonthlyClimateRow, ProjectRow
+from heatledger.inputs.rows import MONTHLY_TABLE, SHEETS, MonthlyClimateRow, ProjectRow
 from heatledger.workbook.canvas import Canvas
-from heatledger.workbook.dropdowns import LISTS, Key, Source, key_of, write_lists
+from heatledger.workbook.dropdowns import LISTS, Key, key_of, write_lists
+from heatledger.workbook.guards import guard, guard_titles, note, story
 from heatledger.workbook.guide import TITLE_OF_GUIDE, write_guide
 from heatledger.workbook.look import HEAD, INPUT, OPTIONAL, PURPOSE, REQUIRED, SMALL, TITLE, UNIT, Style
-from heatledger.workbook.measure import LINE, line_count
 from heatledger.workbook.pages import book_bytes, new_book, print_setup
-from heatledger.workbook.slips import Field, limits, mark_rows, mark_slips, name_areas, show_as_filled
+from heatledger.workbook.row_marks import Rows, name_columns
+from heatledger.workbook.slips import Field, mark_gaps, mark_rows, show_as_filled
 
 __all__ = ["build_template"]
 
-SPARE_ROWS = 60
-"""Empty rows ready for input below the filled ones."""
+SPARE_ROWS = 300
+"""Empty rows ready for input below the filled ones: dropdowns, warnings and lists reach them."""
 TINTED_ROWS = 12
 """Spare rows that show from the start; further ones show as the sheet fills, so that empty rows are not printed."""
+ROWS_IN_VIEW = 20
+"""Rows that show below the titles on a small screen."""
 HINT_ROW, UNITS_ROW, HEADER_ROW, FIRST_ROW = 3, 4, 5, 6
-MOST_PROMPT, MOST_TITLE = 255, 32
-"""Characters an input prompt and its title may have (ECMA-376 Part 1, 18.3.1.32)."""
 _TEXT_INPUT = replace(INPUT, number_format="@")
-"""Kept as text, lest a spreadsheet program turns months such as 5-9 into a date."""
+"""Kept as text, lest a spreadsheet program turns months 5-9 into a date and room 1.10 into the number 1.1."""
 _NUMBER_INPUT = replace(INPUT, horizontal="right", wrap=False)
+_LABELLED_NUMBER = replace(INPUT, wrap=False)
 _HINT = Style(italic=True, size=8.5, colour=SMALL.colour)
-_HINT_NUMBER = replace(_HINT, horizontal="right")
+_HINT_NUMBER = replace(_HINT, horizontal="right", indent=1)
+_NUMBERS = {"number", "integer", "azimuth"}
+"""Kinds that stand on the right."""
+BUTTON = 10.0
+"""Room below the titles for the buttons that sort and filter. [pt]"""
 MOST_OF_A_HINT = 40
 """Characters of an example above a title."""
 MOST_WIDTH_OF_A_PAGE = 300.0
 """Wider sheets print on two pages side by side, else nobody could read them. [characters]"""
 MOST_WIDTH_UPRIGHT = 150.0
 """Narrower sheets print upright. [characters]"""
-_PROJECT_WIDTHS = (24, 44, 8, 84)
+_PROJECT_WIDTHS = (28, 44, 8, 84)
 
 
-def build_template(values: Mapping[str, Sequence[Mapping[str, object]]]) -> bytes:
+def build_template(values: Mapping[str, Sequence[Mapping[str, object]]], climates: Sequence[str] = ()) -> bytes:
     """The input workbook, with rows filled in.
 
     Parameters
@@ -53,6 +59,8 @@ def build_template(values: Mapping[str, Sequence[Mapping[str, object]]]) -> byte
     values : mapping of str to sequence of mappings
         Rows to fill in, by sheet name; each row maps field names to values. Sheet
         Project takes one row.
+    climates : sequence of str
+        Names of the shipped climates, offered as weather of the project.
 
     Returns
     -------
@@ -64,30 +72,40 @@ def build_template(values: Mapping[str, Sequence[Mapping[str, object]]]) -> byte
     project = str((list(values.get(ProjectRow.sheet, ())) or [{}])[0].get("project", ""))
     write_guide(guide, project)
     sheets = {model: book.create_sheet(model.sheet) for model in SHEETS}
-    rows = {model: list(values.get(model.sheet, ())) for model in SHEETS}
-    sources = {
-        model.sheet: Source(model.sheet, FIRST_ROW, FIRST_ROW + len(rows[model]) + _spare(model, rows[model]) - 1)
-        for model in SHEETS
-    }
-    lists = write_lists(book, sources)
-    name_areas(book, sources["Envelope"])
+    filled = {model: list(values.get(model.sheet, ())) for model in SHEETS}
+    rows = {model: Rows(model, FIRST_ROW, _last_row(model, len(filled[model]))) for model in SHEETS}
+    labels = _labelled(climates)
+    lists = write_lists(book, rows, [key_of(labels["weather"])])
+    name_columns(book, rows)
     book[LISTS].protection.sheet = guide.protection.sheet = True
     for model, sheet in sheets.items():
         if model is ProjectRow:
-            _labels(sheet, rows[model], lists)
+            _labels(sheet, labels, filled[model], lists)
         else:
-            _table(sheet, model, rows[model], sources[model.sheet].last, lists)
+            _table(sheet, rows[model], filled[model], lists)
         titles = f"{UNITS_ROW}:{HEADER_ROW}" if model is not ProjectRow else ""
         print_setup(sheet, project, titles=titles, portrait=_sheet_width(model) <= MOST_WIDTH_UPRIGHT)
-        if _sheet_width(model) > MOST_WIDTH_OF_A_PAGE:
+        if _in_two_pages(model):
             sheet.page_setup.fitToWidth = 2
             sheet.print_title_cols = "A:A"
+    book.active = sheets[ProjectRow]
     return book_bytes(book)
 
 
-def _spare(model: type[SheetRow], rows: Sequence[Mapping[str, object]]) -> int:
-    """Rows to leave empty; a year has twelve months."""
-    return max(12 - len(rows), 0) if model is MonthlyClimateRow else SPARE_ROWS
+def _last_row(model: type[SheetRow], filled: int) -> int:
+    """Last row that is ready for input; a year has twelve months."""
+    spare = max(12 - filled, 0) if model is MonthlyClimateRow else SPARE_ROWS
+    return FIRST_ROW + filled + spare - 1
+
+
+def _labelled(climates: Sequence[str]) -> dict[str, Column]:
+    """Columns of the project; its weather may be chosen, or typed as a path."""
+    columns = ProjectRow.columns()
+    return {**columns, "weather": replace(columns["weather"], choices=(*climates, MONTHLY_TABLE))}
+
+
+def _in_two_pages(model: type[SheetRow]) -> bool:
+    return _sheet_width(model) > MOST_WIDTH_OF_A_PAGE
 
 
 def _sheet_width(model: type[SheetRow]) -> float:
@@ -98,86 +116,126 @@ def _sheet_width(model: type[SheetRow]) -> float:
 
 def _hints(canvas: Canvas, model: type[SheetRow]) -> None:
     """An example of each column in grey, above the units, where nothing is read."""
-    example = example_values()[model.sheet][0]
-    texts = []
-    for place, (field, column) in enumerate(model.columns().items(), start=1):
-        value = example.get(field)
-        shown = "" if value is None else f"e.g. {plain(value) if isinstance(value, float) else value}"
-        texts.append(shown if len(shown) <= MOST_OF_A_HINT else "")
-        style = _HINT_NUMBER if column.kind in {"number", "integer", "azimuth"} else _HINT
-        canvas.put(HINT_ROW, place, texts[-1] or None, style)
-    canvas.fit(HINT_ROW, texts, size=8.5)
+    texts = [_hint(model, field) for field in model.columns()]
+    for place, (text, column) in enumerate(zip(texts, model.columns().values(), strict=True), start=1):
+        canvas.put(HINT_ROW, place, text or None, _HINT_NUMBER if column.kind in _NUMBERS else _HINT)
+    canvas.fit(HINT_ROW, texts, size=_HINT.size)
 
 
-def _labels(sheet: Worksheet, rows: Sequence[Mapping[str, object]], lists: Mapping[Key, str]) -> None:
+def _hint(model: type[SheetRow], field: str) -> str:
+    """The first short value of the example."""
+    values = (row[field] for row in example_values()[model.sheet] if field in row)
+    shown = (f"e.g. {plain(value) if isinstance(value, float) else value}" for value in values)
+    return next((text for text in shown if len(text) <= MOST_OF_A_HINT), "")
+
+
+def _labels(
+    sheet: Worksheet,
+    columns: Mapping[str, Column],
+    rows: Sequence[Mapping[str, object]],
+    lists: Mapping[Key, str],
+) -> None:
     """The Project sheet: labels, values, units and notes side by side."""
     canvas = Canvas(sheet, _PROJECT_WIDTHS)
     _heading(canvas, "Project data", ProjectRow.purpose)
     for place, title in enumerate(("Label", "Value", "Unit", "Note"), start=1):
         canvas.put(3, place, title, HEAD)
     given = rows[0] if rows else {}
-    for row, (field, column) in enumerate(ProjectRow.columns().items(), start=UNITS_ROW):
-        note = _story(column)
+    cells = {field: reference(row, 2) for row, field in enumerate(columns, start=UNITS_ROW)}
+    for row, (field, column) in enumerate(columns.items(), start=UNITS_ROW):
         canvas.put(row, 1, column.title, REQUIRED if column.required else OPTIONAL)
-        canvas.put(row, 2, given.get(field), INPUT)
+        value = given.get(field)
+        canvas.put(row, 2, value, _LABELLED_NUMBER if column.kind in _NUMBERS else _TEXT_INPUT)
         canvas.put(row, 3, column.unit, UNIT)
-        canvas.put(row, 4, note, SMALL)
-        canvas.fit(row, (column.title, given.get(field), column.unit, note))
-        cell = reference(row, 2)
-        _guard(sheet, Field(column, cell, cell, lists.get(key_of(column), "")), prompt=False)
-    sheet.freeze_panes = reference(UNITS_ROW, 2)
+        canvas.put(row, 4, story(column), SMALL)
+        told = canvas.fit(row, ("", "", "", story(column)), size=SMALL.size)
+        canvas.height(row, max(told, canvas.fit(row, (column.title, value))))
+        guard(sheet, Field(column, cells[field], cells[field], lists.get(key_of(column), "")), prompt=False)
+    first, *_, last = cells.values()
+    mark_gaps(sheet, [cells[field] for field, column in columns.items() if column.required], f"{first}:{last}")
+    guard_titles(sheet, f"{reference(UNITS_ROW, 1)}:{reference(UNITS_ROW + len(columns) - 1, 1)}", "COLUMN")
+    sheet.freeze_panes = first
+    _stand_at(sheet, next((cell for field, cell in cells.items() if field not in given), first), "bottomRight")
 
 
-def _table(
-    sheet: Worksheet,
-    model: type[SheetRow],
-    rows: Sequence[Mapping[str, object]],
-    last: int,
-    lists: Mapping[Key, str],
-) -> None:
-    columns = model.columns()
+def _table(sheet: Worksheet, rows: Rows, filled: Sequence[Mapping[str, object]], lists: Mapping[Key, str]) -> None:
+    model, columns = rows.model, rows.model.columns()
     canvas = Canvas(sheet, [_width(column, place == 0) for place, column in enumerate(columns.values())])
-    _heading(canvas, model.sheet, model.purpose)
+    _heading(canvas, model.sheet, model.purpose, column=2 if _in_two_pages(model) else 1)
     _hints(canvas, model)
     for place, column in enumerate(columns.values(), start=1):
         canvas.put(UNITS_ROW, place, column.unit, UNIT)
-        title = canvas.put(HEADER_ROW, place, column.title, REQUIRED if column.required else OPTIONAL)
-        title.comment = _note(column)
+        canvas.put(HEADER_ROW, place, column.title, REQUIRED if column.required else OPTIONAL).comment = note(column)
     canvas.fit(UNITS_ROW, [column.unit for column in columns.values()])
-    canvas.fit(HEADER_ROW, [column.title for column in columns.values()], bold=True)
-    _fill(canvas, columns, rows, last)
-    for place, column in enumerate(columns.values(), start=1):
-        letters = column_letters(place)
-        cells = f"{letters}{FIRST_ROW}:{letters}{last}"
-        _guard(sheet, Field(column, cells, f"{letters}{FIRST_ROW}", lists.get(key_of(column), "")))
-    mark_rows(sheet, model, FIRST_ROW, last)
-    show_as_filled(sheet, len(columns), FIRST_ROW + len(rows) + TINTED_ROWS, last)
+    height = canvas.fit(HEADER_ROW, [column.title for column in columns.values()], bold=True)
+    canvas.height(HEADER_ROW, height + BUTTON)
+    _fill(canvas, columns, filled, rows.last)
+    for field, column in columns.items():
+        cells = rows.column(field)
+        field_cells = Field(column, cells, cells.partition(":")[0], lists.get(key_of(column), ""))
+        guard(sheet, field_cells, names_stand_before=_stands_before(column.names_from, model))
+    mark_rows(sheet, rows)
+    show_as_filled(sheet, len(columns), FIRST_ROW + len(filled) + TINTED_ROWS, rows.last)
+    end = column_letters(len(columns))
+    guard_titles(sheet, f"A{HEADER_ROW}:{end}{HEADER_ROW}", "ROW")
+    sheet.add_table(Table(displayName=_table_name(model), ref=f"A{HEADER_ROW}:{end}{rows.last}"))
     sheet.freeze_panes = reference(FIRST_ROW, 2)
+    _stand_at_first_empty(sheet, filled)
+
+
+def _table_name(model: type[SheetRow]) -> str:
+    """Declared as tables, the rows are sorted and filtered by themselves, without what stands above the titles."""
+    return f"{model.sheet.replace(' ', '_').replace('-', '_')}_rows"
+
+
+def _stands_before(sheet: str, model: type[SheetRow]) -> bool:
+    """Whether who fills in the sheets from left to right has filled in a sheet before another."""
+    order = [each.sheet for each in SHEETS]
+    return sheet in order and order.index(sheet) < order.index(model.sheet)
+
+
+def _stand_at_first_empty(sheet: Worksheet, filled: Sequence[Mapping[str, object]]) -> None:
+    """The first empty row, or the first one whose name is given and nothing else, in view with those above it."""
+    named = next((place for place, row in enumerate(filled) if len(row) == 1), None)
+    row, column = (FIRST_ROW + len(filled), 1) if named is None else (FIRST_ROW + named, 2)
+    _stand_at(sheet, reference(row, column), "bottomLeft" if column == 1 else "bottomRight")
+    if sheet.sheet_view.pane and row > FIRST_ROW + ROWS_IN_VIEW:
+        sheet.sheet_view.pane.topLeftCell = reference(row - ROWS_IN_VIEW // 2, 2)
+
+
+def _stand_at(sheet: Worksheet, cell: str, pane: Literal["bottomLeft", "bottomRight"]) -> None:
+    """Where the cursor stands when the sheet is opened: what is typed at once must not meet a title."""
+    view = sheet.sheet_view
+    if view.pane:
+        view.pane.activePane = pane
+    for selection in view.selection:
+        selection.activeCell = selection.sqref = cell
 
 
 def _fill(canvas: Canvas, columns: Mapping[str, Column], rows: Sequence[Mapping[str, object]], last: int) -> None:
-    """Rows filled in, then spare ones, the last of them without tint and border as yet."""
-    styles = {_input_style(column) for column in columns.values()}
-    bare = {style: replace(style, fill="", border=Border()) for style in styles}
-    tinted = FIRST_ROW + len(rows) + TINTED_ROWS
-    for row in range(FIRST_ROW, last + 1):
-        given = rows[row - FIRST_ROW] if row - FIRST_ROW < len(rows) else {}
-        for place, (field, column) in enumerate(columns.items(), start=1):
-            style = _input_style(column)
-            canvas.put(row, place, given.get(field), style if row < tinted else bare[style])
+    """Rows filled in, then empty ones; those further down take the style of their column."""
+    styles = [_input_style(column) for column in columns.values()]
+    for place, style in enumerate(styles, start=1):
+        canvas.column(place, replace(style, fill="", border=Border()))
+    for row, given in enumerate(rows, start=FIRST_ROW):
+        for place, (field, style) in enumerate(zip(columns, styles, strict=True), start=1):
+            canvas.put(row, place, given.get(field), style)
         canvas.fit(row, [given.get(field) for field in columns])
+    first = FIRST_ROW + len(rows)
+    for row in range(first, min(first + TINTED_ROWS, last + 1)):
+        for place, style in enumerate(styles, start=1):
+            canvas.put(row, place, None, style)
 
 
 def _input_style(column: Column) -> Style:
-    if column.kind == "months":
-        return _TEXT_INPUT
-    return _NUMBER_INPUT if column.kind in {"number", "integer", "azimuth"} else INPUT
+    return _NUMBER_INPUT if column.kind in _NUMBERS else INPUT if column.kind == "choice" else _TEXT_INPUT
 
 
-def _heading(canvas: Canvas, title: str, purpose: str) -> None:
+def _heading(canvas: Canvas, title: str, purpose: str, column: int = 1) -> None:
+    """Title and purpose; in a column that is not repeated on a second page where there is one."""
     canvas.put(1, 1, title, TITLE)
     canvas.height(1, 24)
-    canvas.put(2, 1, purpose, PURPOSE)
+    canvas.put(2, column, purpose, PURPOSE)
 
 
 def _width(column: Column, first: bool) -> float:
@@ -193,69 +251,3 @@ def _width(column: Column, first: bool) -> float:
             return 14.0
         case "text":
             return 30.0 if first else 52.0
-
-
-def _story(column: Column) -> str:
-    """Help with the default that an empty cell stands for."""
-    stands = f"{column.default:g}" if isinstance(column.default, int | float) else str(column.default)
-    source = f" ({column.default_note})" if column.default_note else ""
-    if column.default is not None:
-        return f"{column.help} Empty: {stands}{source}."
-    if column.default_note and "Empty:" not in column.help:
-        return f"{column.help} Empty: {column.default_note}."
-    return column.help
-
-
-def _note(column: Column) -> Comment:
-    """The note of a title: everything there is to know about its column."""
-    need = "Required" if column.required else "Optional"
-    text = f"{column.label}\n{need}: {column.expected}.\n{_story(column)}"
-    note = Comment(text, "heatledger")
-    note.width, note.height = 330, int((line_count(text, 52) + 1) * LINE * 4 / 3)
-    return note
-
-
-def _guard(sheet: Worksheet, field: Field, prompt: bool = True) -> None:
-    """Dropdown or limits, the prompt beside the cell, and the marking of slips."""
-    validation = _validation(field)
-    validation.allow_blank = True
-    if prompt:
-        story = _story(field.column)
-        validation.promptTitle = field.column.label[:MOST_TITLE]
-        validation.prompt = story if len(story) <= MOST_PROMPT else field.column.help[:MOST_PROMPT]
-        validation.showInputMessage = True
-    if prompt or validation.type:
-        validation.add(field.cells)
-        sheet.add_data_validation(validation)
-    mark_slips(sheet, field)
-
-
-def _validation(field: Field) -> DataValidation:
-    column = field.column
-    match column.kind:
-        case "number" | "integer":
-            low, high = limits(column)
-            found = DataValidation(
-                type="whole" if column.kind == "integer" else "decimal",
-                operator="between",
-                formula1=f"{low:.15g}",
-                formula2=f"{high:.15g}",
-            )
-            return _stopping(found, f"Type {column.expected}.")
-        case "choice":
-            return _stopping(DataValidation(type="list", formula1=field.list), "Choose a word of the list.")
-        case "name":
-            # A row may be typed before the row it refers to: say so, but let it stand.
-            found = DataValidation(type="list", formula1=field.list, errorStyle="warning")
-            return _stopping(found, f"Sheet {column.names_from} has no such name yet. Keep it?")
-        case "azimuth":  # the dropdown offers compass words; degrees may be typed as well
-            return DataValidation(type="list", formula1=field.list, showErrorMessage=False)
-        case "months" | "text":
-            return DataValidation()
-
-
-def _stopping(validation: DataValidation, message: str) -> DataValidation:
-    validation.showErrorMessage = True
-    validation.errorTitle = "Please check"
-    validation.error = message
-    return validation
