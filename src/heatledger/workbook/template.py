@@ -28,13 +28,14 @@ __all__ = ["build_template"]
 SPARE_ROWS = 300
 """Empty rows ready for input below the filled ones: dropdowns, warnings and lists reach them."""
 TINTED_ROWS = 12
-"""Spare rows that show from the start; further ones show as the sheet fills, so that empty rows are not printed."""
+"""Rows that show from the start; further ones show as the sheet fills, so that empty rows are not printed."""
 ROWS_IN_VIEW = 20
 """Rows that show below the titles on a small screen."""
 HINT_ROW, UNITS_ROW, HEADER_ROW, FIRST_ROW = 3, 4, 5, 6
 _TEXT_INPUT = replace(INPUT, number_format="@")
 """Kept as text, lest a spreadsheet program turns months 5-9 into a date and room 1.10 into the number 1.1."""
-_NUMBER_INPUT = replace(INPUT, horizontal="right", wrap=False)
+_NUMBER_INPUT = replace(INPUT, number_format="General_)", horizontal="right", wrap=False)
+"""As typed, with the room of a bracket to the text in the next column."""
 _LABELLED_NUMBER = replace(INPUT, wrap=False)
 _HINT = Style(italic=True, size=8.5, colour=SMALL.colour)
 _HINT_NUMBER = replace(_HINT, horizontal="right", indent=1)
@@ -175,7 +176,7 @@ def _table(sheet: Worksheet, rows: Rows, filled: Sequence[Mapping[str, object]],
         field_cells = Field(column, cells, cells.partition(":")[0], lists.get(key_of(column), ""))
         guard(sheet, field_cells, names_stand_before=_stands_before(column.names_from, model))
     mark_rows(sheet, rows)
-    show_as_filled(sheet, len(columns), FIRST_ROW + len(filled) + TINTED_ROWS, rows.last)
+    show_as_filled(sheet, len(columns), FIRST_ROW + max(len(filled), TINTED_ROWS), rows.last)
     end = column_letters(len(columns))
     guard_titles(sheet, f"A{HEADER_ROW}:{end}{HEADER_ROW}", "ROW")
     sheet.add_table(Table(displayName=_table_name(model), ref=f"A{HEADER_ROW}:{end}{rows.last}"))
@@ -222,7 +223,7 @@ def _fill(canvas: Canvas, columns: Mapping[str, Column], rows: Sequence[Mapping[
             canvas.put(row, place, given.get(field), style)
         canvas.fit(row, [given.get(field) for field in columns])
     first = FIRST_ROW + len(rows)
-    for row in range(first, min(first + TINTED_ROWS, last + 1)):
+    for row in range(first, min(FIRST_ROW + TINTED_ROWS, last + 1)):
         for place, style in enumerate(styles, start=1):
             canvas.put(row, place, None, style)
 
