@@ -32,7 +32,8 @@ STEPS = (
     "Leave an optional cell empty to take its default. The results list every default that was used.",
     "Save the file, then type in a terminal:  heatledger check FILE  and, when nothing is left to mend,  "
     "heatledger run FILE. The results come as new sheets of this workbook.",
-    "You may move columns, add rows, and keep columns and sheets of your own. Keep the titles of ours.",
+    "You may move columns, add, sort and filter rows, and keep columns and sheets of your own. Keep the titles of "
+    "ours.",
 )
 
 EXPLAINED = (
