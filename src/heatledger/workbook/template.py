@@ -117,15 +117,16 @@ def _sheet_width(model: type[SheetRow]) -> float:
 
 def _hints(canvas: Canvas, model: type[SheetRow]) -> None:
     """An example of each column in grey, above the units, where nothing is read."""
-    texts = [_hint(model, field) for field in model.columns()]
+    examples = example_values()[model.sheet]
+    texts = [_hint(examples, field) for field in model.columns()]
     for place, (text, column) in enumerate(zip(texts, model.columns().values(), strict=True), start=1):
         canvas.put(HINT_ROW, place, text or None, _HINT_NUMBER if column.kind in _NUMBERS else _HINT)
     canvas.fit(HINT_ROW, texts, size=_HINT.size)
 
 
-def _hint(model: type[SheetRow], field: str) -> str:
+def _hint(examples: Sequence[Mapping[str, object]], field: str) -> str:
     """The first short value of the example."""
-    values = (row[field] for row in example_values()[model.sheet] if field in row)
+    values = (row[field] for row in examples if field in row)
     shown = (f"e.g. {plain(value) if isinstance(value, float) else value}" for value in values)
     return next((text for text in shown if len(text) <= MOST_OF_A_HINT), "")
 
