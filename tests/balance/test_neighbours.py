@@ -220,7 +220,7 @@ def test_negative_bridges_that_outweigh_an_unheated_space_are_refused(run: Run) 
         run({"Room": 20.0, "Loft": None}, elements, bridges=[negative])
     assert str(caught.value) == (
         "Zones!A6  Zone: found no heat loss from 'Loft'; expected a positive sum of transmission and ventilation."
-        " Check its elements, thermal bridges, leakage and air system."
+        " Give it leakage, an air system, or an element or thermal bridge that loses heat, or join it to another zone."
     )
 
 

@@ -150,7 +150,7 @@ def test_a_zone_that_loses_nothing_is_refused(building: Callable[[Any], Building
         calculate(building(values), flat_sky(OUTDOOR, SUN))
     assert str(caught.value) == (
         "Zones!A5  Zone: found no heat loss from 'Hall'; expected a positive sum of transmission and ventilation. "
-        "Check its elements, thermal bridges, leakage and air system."
+        "Give it leakage, an air system, or an element or thermal bridge that loses heat, or join it to another zone."
     )
 
 

@@ -37,11 +37,12 @@ def test_the_sheet_title_is_not_taken_for_the_header() -> None:
 
 
 def test_a_header_row_without_the_first_title_is_still_found() -> None:
-    table = read_table(BuildUpRow, _cells(("Build up", *HEADER[1:]), ("Wall", 1, "Brick", 250)))
+    table = read_table(BuildUpRow, _cells(("Name of build-up", *HEADER[1:]), ("Wall", 1, "Brick", 250)))
 
     assert not table.complete
     assert [str(problem) for problem in table.problems] == [
-        "Build-ups  Build-up: found no title 'Build-up'; expected the column Build-up. Rename 'Build up' to 'Build-up'."
+        "Build-ups  Build-up: found no title 'Build-up'; expected the column Build-up. "
+        "Rename 'Name of build-up' to 'Build-up'."
     ]
 
 

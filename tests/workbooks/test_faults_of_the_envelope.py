@@ -90,7 +90,7 @@ FAULTS: dict[str, tuple[Changes, str]] = {
     "second material that resembles a shipped one": (
         {**STUD, "Build-ups!E6": "Timber, softwood 50"},
         "Build-ups!E6  Second material: found 'Timber, softwood 50'; expected a name from sheet Materials. "
-        "Did you mean 'Timber, softwood 500'?",
+        "Did you mean 'Timber, softwood 450' or 'Timber, softwood 500'?",
     ),
     "air as the second material": (
         {**STUD, "Build-ups!E6": "Unventilated air layer"},

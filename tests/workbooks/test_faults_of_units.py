@@ -35,7 +35,7 @@ FAULTS: dict[str, tuple[Changes, str]] = {
     ),
     "set-point in Fahrenheit": (
         {"Usage!B5": 68},
-        "Usage!B5  Heating set-point [°C]: found 68; expected a number from 0 to 40. Type 20.0 if 68 °F is meant.",
+        "Usage!B5  Heating set-point [°C]: found 68; expected a number from 0 to 40. Type 20 if 68 °F is meant.",
     ),
     "zone colder than its setback": (
         {"Usage!I4": "Setback temperature", "Usage!I5": 18, "Zones!I5": 16},

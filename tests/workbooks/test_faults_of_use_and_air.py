@@ -52,7 +52,7 @@ FAULTS: dict[str, tuple[Changes, str]] = {
     "months that became a date": (
         {"Usage!I5": 16, "Usage!L5": date(2026, 5, 9)},
         f"Usage!L5  Months out of use: found the date 2026-05-09; expected {MONTHS}. "
-        "Format the cell as text and type the value again.",
+        "Format the cell as text and type the value again: 5-9 or 9-5, if that was typed.",
     ),
     "a thirteenth month": (
         {"Usage!I5": 16, "Usage!L5": 13},

@@ -36,7 +36,7 @@ FAULTS: dict[str, tuple[Changes, list[str]]] = {
         {"Openings!E5": "1200 mm"},
         [
             "Openings!E5  Width [m]: found the text '1200 mm';"
-            " expected a number above 0 and at most 50. Convert it to m and type the number alone.",
+            " expected a number above 0 and at most 50. Type 1.2 for 1200 mm.",
         ],
     ),
     "percent as text": (
@@ -49,7 +49,7 @@ FAULTS: dict[str, tuple[Changes, list[str]]] = {
     "percent as text where a share belongs": (
         {"Glazed units!C5": "60 %"},
         [
-            "Glazed units!C5  g-value [-]: found the text '60 %'; expected a number from 0 to 1. Type 0.6 as a number.",
+            "Glazed units!C5  g-value [-]: found the text '60 %'; expected a number from 0 to 1. Type 0.6 for 60 %.",
         ],
     ),
     "percent stored as a fraction": (
@@ -77,7 +77,7 @@ FAULTS: dict[str, tuple[Changes, list[str]]] = {
         {"Openings!D5": "2 pieces"},
         [
             "Openings!D5  Number: found the text '2 pieces';"
-            " expected a whole number from 1 to 10000. Type a number, without unit or words.",
+            " expected a whole number from 1 to 10000. Type 2 alone, as a number.",
         ],
     ),
     "text of two lines": (
@@ -99,7 +99,7 @@ FAULTS: dict[str, tuple[Changes, list[str]]] = {
         [
             "Zones!E5  Floor area [m²]: found the date 2024-02-01;"
             " expected a number above 0 and at most 1000000."
-            " Format the cell as a number and type the value again.",
+            " Format the cell as a number and type the value again: 1.2, if that was typed.",
         ],
     ),
     "date in a name": (
@@ -120,7 +120,7 @@ FAULTS: dict[str, tuple[Changes, list[str]]] = {
         {"Air systems!G6": True},
         [
             "Air systems!G6  Bypass in cooling: found the logical value TRUE;"
-            " expected one of: yes, no. Type one of: yes, no.",
+            " expected one of: yes, no. Did you mean 'yes'?",
         ],
     ),
     "error value": (
@@ -198,7 +198,7 @@ FAULTS: dict[str, tuple[Changes, list[str]]] = {
         [
             "Envelope!H6  Azimuth [°]: found 400;"
             " expected degrees from north clockwise, 0 to 360, or a compass direction such as N, NNE, NE."
-            " Type a value in ° within these limits.",
+            " Count clockwise from north: 90 is east, 180 south, 270 west.",
         ],
     ),
     "layer zero": (
@@ -498,7 +498,8 @@ FAULTS: dict[str, tuple[Changes, list[str]]] = {
         {"Zones!A7": "Annexe", "Zones!B7": "heated", "Zones!C7": "Dwelling", "Zones!E7": 20, "Zones!F7": 50},
         [
             "Zones!A7  Zone: found 'Annexe' without envelope;"
-            " expected at least one element or ground floor. Add the elements of 'Annexe' to sheet Envelope.",
+            " expected at least one element or ground floor. Add the elements of 'Annexe' to sheet Envelope,"
+            " inner walls to other zones included.",
         ],
     ),
     "heated zone with inner walls only": (
@@ -509,7 +510,8 @@ FAULTS: dict[str, tuple[Changes, list[str]]] = {
         },
         [
             "Zones!A7  Zone: found 'Annexe' without envelope;"
-            " expected at least one element or ground floor. Add the elements of 'Annexe' to sheet Envelope.",
+            " expected at least one element or ground floor. Add the elements of 'Annexe' to sheet Envelope,"
+            " inner walls to other zones included.",
         ],
     ),
     "unconditioned zone without heat path": (

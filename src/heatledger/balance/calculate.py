@@ -206,7 +206,7 @@ def _no_loss(zone: Zone) -> Problem:
     return Problem(
         f"no heat loss from '{zone.name}'",
         "a positive sum of transmission and ventilation",
-        "Check its elements, thermal bridges, leakage and air system.",
+        "Give it leakage, an air system, or an element or thermal bridge that loses heat, or join it to another zone.",
         sheet=zone.origin.sheet,
         cell=zone.origin.cell(),
         column="Zone",

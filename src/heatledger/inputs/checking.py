@@ -12,11 +12,21 @@ from heatledger.errors import Problem
 from heatledger.inputs.cells import Cell
 from heatledger.inputs.columns import COMPASS, Column, SheetRow, plain
 from heatledger.inputs.tables import Record
-from heatledger.inputs.wording import compass_word, describe, mend, month_numbers, nearest, typed_name, unit_slip
+from heatledger.inputs.units import within_limits, wrong_size
+from heatledger.inputs.wording import (
+    chosen_word,
+    compass_word,
+    describe,
+    folded,
+    mend,
+    month_numbers,
+    typed_name,
+)
 
 __all__ = ["Checked", "check_record", "meant_word", "placed_row", "problem_at"]
 
 Row = TypeVar("Row", bound=SheetRow)
+EMPTY = "an empty cell"
 Faults: TypeAlias = dict[str, tuple[str, str, str]]
 """What was found, what is expected and the mend, by field."""
 
@@ -50,12 +60,24 @@ def check_record(model: type[Row], record: Record) -> Checked[Row]:
     faults |= refused
     if row is not None and not faults:
         row.placed(record.row, record.positions)
-        return Checked(row, row)
+        return Checked(row, row, record.lost)
     missing = {name for name, column in model.columns().items() if column.required and name not in values}
-    at_fault = frozenset(faults) | missing
+    at_fault = frozenset(faults) | missing | record.lost
     partial = placed_row(model, record, {name: value for name, value in values.items() if name not in at_fault})
+    gaps = [name for name, (found, *_) in faults.items() if found == EMPTY]
+    if len(gaps) > 1 and not model.labelled:
+        return _hardly_filled(partial, [name for name in faults if name not in gaps], gaps, faults)
     problems = [problem_at(partial, name, *faults[name]) for name in model.columns() if name in faults]
     return Checked(None, partial, at_fault, problems)
+
+
+def _hardly_filled(partial: Row, others: list[str], gaps: list[str], faults: Faults) -> Checked[Row]:
+    """One problem for all that a row lacks; a remark or a sum below the table is no row, and no rule is told of it."""
+    titles = ", ".join(partial.columns()[name].title for name in gaps)
+    fix = "Fill them in, or clear the row."
+    problems = [problem_at(partial, partial.key(), f"a row without {titles}", "these cells filled in", fix)]
+    problems += [problem_at(partial, name, *faults[name]) for name in others]
+    return Checked(None, partial, frozenset(partial.columns()), problems)
 
 
 def placed_row(model: type[Row], record: Record, values: Mapping[str, Any] | None = None) -> Row:
@@ -80,7 +102,7 @@ def meant_word(typed: str, words: tuple[str, ...]) -> str:
 
 
 def _bare(word: str) -> str:
-    return word.casefold().replace("air layer", "").strip(" :,()")
+    return folded(word).replace("air layer", "").strip(" :,()")
 
 
 def _typed_values(model: type[SheetRow], record: Record) -> tuple[dict[str, object], Faults]:
@@ -91,13 +113,13 @@ def _typed_values(model: type[SheetRow], record: Record) -> tuple[dict[str, obje
         cell = record.cells.get(name)
         if cell is None:
             if column.required and name in record.positions:
-                faults[name] = ("an empty cell", column.expected, _fill_in(model, name, record))
+                faults[name] = (EMPTY, column.expected, _fill_in(model, name, record))
             continue
         value, fix = _typed_value(cell, column)
         if fix:
             faults[name] = (describe(cell), column.expected, fix)
         elif _looks_like_fraction(column, value):
-            faults[name] = (describe(cell), _percent(column), _in_percent(value))
+            faults[name] = (describe(cell), _percent(column), _in_percent(column, value))
         else:
             values[name] = value
     return values, faults
@@ -119,9 +141,11 @@ def _percent(column: Column) -> str:
     return f"0, or a number above 1{upper}, in percent"
 
 
-def _in_percent(value: object) -> str:
-    percent = plain(100 * value) if isinstance(value, float) else ""
-    return f"Type {percent} for {percent} %."
+def _in_percent(column: Column, value: object) -> str:
+    percent = 100 * value if isinstance(value, float) else 0.0
+    if not within_limits(percent, column):
+        return "Type the share in percent."
+    return f"Type {plain(percent)} for {plain(percent)} %."
 
 
 def _validated(model: type[Row], values: dict[str, object], record: Record) -> tuple[Row | None, Faults]:
@@ -138,11 +162,7 @@ def _validated(model: type[Row], values: dict[str, object], record: Record) -> t
 
 
 def _out_of_bounds(column: Column, cell: Cell) -> str:
-    """The likely meaning of a value in another unit, else a plain mend."""
-    meant = unit_slip(cell.value, column) if isinstance(cell.value, float) else ""
-    if meant:
-        return meant
-    return f"Type a value in {column.unit} within these limits." if column.unit.strip("-") else "Correct the value."
+    return wrong_size(cell.value, column) if isinstance(cell.value, float) else "Correct the value."
 
 
 def _typed_value(cell: Cell, column: Column) -> tuple[object, str]:
@@ -181,10 +201,10 @@ def _integer(cell: Cell, column: Column) -> tuple[object, str]:
 def _choice(cell: Cell, column: Column) -> tuple[object, str]:
     typed = typed_name(cell)
     for word in column.choices:
-        if word.casefold() == typed.casefold():
+        if folded(word) == folded(typed):
             return word, ""
-    close = nearest(typed, column.choices)
-    return None, f"Did you mean '{close}'?" if close else "Choose from the list of the cell."
+    meant = chosen_word(typed, column.choices)
+    return None, f"Did you mean '{meant}'?" if meant else "Choose from the list of the cell."
 
 
 def _months(cell: Cell) -> tuple[object, str]:

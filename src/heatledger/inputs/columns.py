@@ -214,7 +214,7 @@ def months(title: str, *, help: str, default_note: str = "") -> Any:  # noqa: A0
 
 def azimuth(title: str, *, help: str, default_note: str) -> Any:  # noqa: A002
     """Declare a direction: degrees from north clockwise or a compass word."""
-    return _field(Column(title, "azimuth", "°", help, default_note=default_note), ge=0, le=360)
+    return _field(Column(title, "azimuth", "°", help, default_note=default_note, at_least=0, at_most=360), ge=0, le=360)
 
 
 class SheetRow(BaseModel):
@@ -229,6 +229,8 @@ class SheetRow(BaseModel):
     """Whether the first column is a name that may stand only once."""
     required_sheet: ClassVar[bool] = False
     """Whether a workbook without this sheet is at fault."""
+    either: ClassVar[tuple[str, str, str]] = ("", "", "")
+    """A title over texts of one field and numbers of another, e.g. Build-up or U-value, and the two fields."""
     labelled: ClassVar[bool] = False
     """Whether the sheet holds one record, its labels in column A and values in column B."""
 

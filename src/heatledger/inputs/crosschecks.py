@@ -166,13 +166,14 @@ def _envelope_of_zones(rows: Rows, typed: Typed) -> Iterator[Problem]:
     for zone in rows.zones:
         if folded(zone.name) in {OUTDOORS, NEIGHBOUR}:
             continue
-        fix = f"Add the elements of '{zone.name}' to sheet Envelope."
+        fix = f"Add the elements of '{zone.name}' to sheet Envelope"
         if zone.conditioning != "unconditioned" and folded(zone.name) not in bounded:
             found = f"'{zone.name}' without envelope"
-            yield problem_at(zone, "name", found, "at least one element or ground floor", fix)
+            inner = f"{fix}, inner walls to other zones included."
+            yield problem_at(zone, "name", found, "at least one element or ground floor", inner)
         if zone.conditioning == "unconditioned" and folded(zone.name) not in tied:
             expected = "an element to outdoors or to a conditioned zone, or a ground floor"
-            yield problem_at(zone, "name", f"'{zone.name}' without any heat path", expected, fix)
+            yield problem_at(zone, "name", f"'{zone.name}' without any heat path", expected, f"{fix}.")
 
 
 def _zones_in_faulty_rows(rows: Rows, typed: Typed) -> set[str]:

@@ -11,7 +11,8 @@ from heatledger.inputs.columns import Column, SheetRow
 from heatledger.inputs.prefilled import shipped_materials
 from heatledger.inputs.rows import AIR_LAYERS, SHEETS, MaterialRow
 from heatledger.inputs.tables import Record
-from heatledger.inputs.wording import folded, nearest, typed_name
+from heatledger.inputs.wording import chosen_word, did_you_mean, folded, typed_name
+from heatledger.inputs.words import IN_THE_GROUND, NEIGHBOUR, OTHER_WORDS, OUTDOORS
 
 __all__ = ["Typed", "check_names"]
 
@@ -26,10 +27,13 @@ class Typed:
         By sheet name.
     unreadable : frozenset of str
         Sheets that are absent although required, or lack a required column.
+    absent : frozenset of str
+        Sheets that the workbook does not hold.
     """
 
     records: Mapping[str, Sequence[Record]] = field(default_factory=dict)
     unreadable: frozenset[str] = frozenset()
+    absent: frozenset[str] = frozenset()
 
     def words(self, sheet: str, name: str) -> list[str]:
         """Texts of a column."""
@@ -39,13 +43,25 @@ class Typed:
 
 def check_names(typed: Typed) -> Iterator[Problem]:
     """Names that stand twice, and references that resolve to nothing."""
+    nowhere: dict[str, Problem] = {}
     for model in SHEETS:
         records = typed.records.get(model.sheet, ())
         if model.unique:
             yield from _duplicates(model, records)
         for name, column in model.columns().items():
             if column.kind == "name" and column.names_from not in typed.unreadable:
-                yield from _references(model, name, column, typed)
+                for problem in _references(model, name, column, typed):
+                    if column.names_from in typed.absent:
+                        nowhere.setdefault(column.names_from, _no_sheet(column.names_from, problem))
+                    else:
+                        yield problem
+    yield from nowhere.values()
+
+
+def _no_sheet(sheet: str, first: Problem) -> Problem:
+    """One problem for all names that would stand on a sheet that is absent."""
+    expected = f"a sheet named {sheet}, which {first.sheet}!{first.cell} refers to"
+    return Problem("no such sheet", expected, "Copy it from a fresh template.", sheet=sheet)
 
 
 def _duplicates(model: type[SheetRow], records: Sequence[Record]) -> Iterator[Problem]:
@@ -71,20 +87,28 @@ def _references(model: type[SheetRow], name: str, column: Column, typed: Typed) 
             continue
         if target is MaterialRow and folded(word) in shipped_materials():
             continue
+        found, row = f"'{word}'", placed_row(model, record)
         if meant_word(word, AIR_LAYERS) in AIR_LAYERS:
             fix = f"Choose the air layer as Material, and what bridges it as {column.title}."
-            yield problem_at(placed_row(model, record), name, f"'{word}'", "a material", fix)
+            yield problem_at(row, name, found, "a material", fix)
             continue
-        close = nearest(word, known) or (_shipped_like(word) if target is MaterialRow else "")
-        if close or all(names):
-            add = f"Add '{word}' to sheet {column.names_from}, or choose from the list of the cell."
-            fix = f"Did you mean '{close}'?" if close else add
-            yield problem_at(placed_row(model, record), name, f"'{word}'", column.expected, fix)
+        likely = _likely(word, column, known)
+        if likely or all(names):
+            fix = likely or f"Add '{word}' to sheet {column.names_from}, or choose from the list of the cell."
+            yield problem_at(row, name, found, column.expected, fix)
 
 
-def _shipped_like(word: str) -> str:
-    """The shipped material that resembles a word."""
-    return nearest(word, (row.name for row in shipped_materials().values()), 0.75)
+def _likely(word: str, column: Column, known: Sequence[str]) -> str:
+    """The mend for a name that is no name but a word of ours, or that resembles a known one."""
+    if folded(word) in IN_THE_GROUND and OUTDOORS in column.choices:
+        return "Move it to sheet Ground floors, which also takes the walls of a basement."
+    if folded(word) in {OUTDOORS, NEIGHBOUR}:
+        return "Choose from the list of the cell."
+    meant = chosen_word(word, [fixed for fixed in column.choices if folded(word) in OTHER_WORDS.get(fixed, ())])
+    if meant:
+        return f"Did you mean '{meant}'?"
+    shipped = [row.name for row in shipped_materials().values()] if column.names_from == MaterialRow.sheet else []
+    return did_you_mean(word, known) or did_you_mean(word, shipped, 0.75)
 
 
 def _named(record: Record, name: str) -> str:

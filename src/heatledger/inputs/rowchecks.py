@@ -34,8 +34,10 @@ LIGHT = 300.0
 """A material below it is no masonry, timber or metal. [kg/m³]"""
 MOST_OF_LIGHT = 1.0
 """More than any light material conducts. [W/(m·K)]"""
-HOURS_OF_DAY = 24.0
-DAYS_OF_WEEK = 7.0
+METAL = 2500.0
+"""Every metal in use is denser. [kg/m³]"""
+MOST_OF_STONE = 6.0
+"""More than any stone or concrete conducts, quartzite included. [W/(m·K)]"""
 
 Rule: TypeAlias = tuple[type[SheetRow], frozenset[str], Callable[[Any], Iterator[Problem]]]
 """Row model, the fields a rule reads, and the rule."""
@@ -84,18 +86,22 @@ def _usage_set_points(usage: UsageRow) -> Iterator[Problem]:
 
 
 def _conductivity(material: MaterialRow) -> Iterator[Problem]:
-    """A light material conducts little: 40 for 0.040 is milliwatts."""
-    light = material.density is not None and material.density < LIGHT
-    if light and material.conductivity > MOST_OF_LIGHT:
-        found = f"{plain(material.conductivity)} for a density of {plain(material.density or 0)} kg/m³"
-        expected = f"at most {plain(MOST_OF_LIGHT)} for a material below {plain(LIGHT)} kg/m³"
+    """What is no metal conducts little: 40 for 0.040 is milliwatts."""
+    density = material.density
+    if density is None or density >= METAL:
+        return
+    kind, most = (LIGHT, MOST_OF_LIGHT) if density < LIGHT else (METAL, MOST_OF_STONE)
+    if material.conductivity > most:
+        found = f"{plain(material.conductivity)} for a density of {plain(density)} kg/m³"
+        expected = f"at most {plain(most)} for a material below {plain(kind)} kg/m³"
         fix = f"Type {plain(material.conductivity / 1000)} if mW/(m·K) were meant, or correct the density."
         yield problem_at(material, "conductivity", found, expected, fix)
 
 
 def _setback(usage: UsageRow) -> Iterator[Problem]:
-    reduced = usage.heated_hours < HOURS_OF_DAY or usage.days_in_use < DAYS_OF_WEEK or usage.months_out_of_use
-    if reduced and usage.setback is None:
+    columns = usage.columns()  # where the cells are empty it is day and night, every day
+    reduced = any(getattr(usage, field) < columns[field].default for field in ("heated_hours", "days_in_use"))
+    if (reduced or usage.months_out_of_use) and usage.setback is None:
         expected = "the temperature kept in hours, on days or in months without use"
         yield problem_at(usage, "setback", "an empty cell", expected, "Fill in the cell.")
     if usage.setback is not None and usage.setback > usage.heating_set_point:

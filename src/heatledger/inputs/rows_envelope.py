@@ -120,6 +120,7 @@ class ElementRow(SheetRow):
         "The opaque faces of the zones, each entered once. Floors on the ground have their own sheet."
     )
     required_sheet: ClassVar[bool] = True
+    either: ClassVar[tuple[str, str, str]] = ("Build-up or U-value", "build_up", "u_value")
 
     name: str = text("Element", help="Unique name, e.g. W-south.", required=True)
     zone: str = name_from("Zones", "Zone", help="The zone this element encloses.", required=True)

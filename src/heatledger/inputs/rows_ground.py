@@ -15,6 +15,7 @@ class GroundFloorRow(SheetRow):
 
     sheet: ClassVar[str] = "Ground floors"
     purpose: ClassVar[str] = "Floors on the ground, calculated with the ground beneath them (ISO 13370)."
+    either: ClassVar[tuple[str, str, str]] = ("Build-up or U-value", "build_up", "u_value")
 
     name: str = text("Ground floor", help="Unique name.", required=True)
     zone: str = name_from("Zones", "Zone", help="The zone above.", required=True)

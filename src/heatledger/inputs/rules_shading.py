@@ -9,7 +9,15 @@ from heatledger.errors import Problem
 from heatledger.inputs.checking import problem_at
 from heatledger.inputs.columns import SheetRow, plain
 from heatledger.inputs.names import Typed
-from heatledger.inputs.rows import OUTDOORS, ElementRow, ObstructionRow, OpeningRow, Rows, ShadingDeviceRow
+from heatledger.inputs.rows import (
+    NEIGHBOUR,
+    ElementRow,
+    ObstructionRow,
+    OpeningRow,
+    Rows,
+    ShadingDeviceRow,
+    ZoneRow,
+)
 from heatledger.inputs.wording import folded
 
 __all__ = ["SHADING_RULES", "in_the_sun", "uses"]
@@ -29,17 +37,17 @@ def uses(row: ObstructionRow | ShadingDeviceRow, field: str) -> bool:
 
 def in_the_sun(rows: Rows, typed: Typed) -> Iterator[Problem]:
     """Obstructions and movable shading stand only where there is sun."""
-    outdoors = {folded(element.name): folded(element.faces) == OUTDOORS for element in rows.elements}
+    known = {NEIGHBOUR, *map(folded, typed.words(ZoneRow.sheet, "name"))}
+    indoors = {folded(element.name) for element in rows.elements if folded(element.faces) in known}
+    for element in rows.elements:
+        if element.obstruction and folded(element.faces) in known:
+            found = f"'{element.obstruction}' on an element that faces '{element.faces}'"
+            yield _no_sun(element, "obstruction", found)
     for opening in rows.openings:
         for field in ("obstruction", "shading"):
             name = getattr(opening, field)
-            if name and not outdoors.get(folded(opening.element), True):
+            if name and folded(opening.element) in indoors:
                 yield _no_sun(opening, field, f"'{name}' on an opening in '{opening.element}'")
-
-
-def _element_in_the_sun(element: ElementRow) -> Iterator[Problem]:
-    if element.obstruction and folded(element.faces) != OUTDOORS:
-        yield _no_sun(element, "obstruction", f"'{element.obstruction}' on an element that faces '{element.faces}'")
 
 
 def _no_sun(row: ElementRow | OpeningRow, field: str, found: str) -> Problem:
@@ -79,7 +87,6 @@ def _use(device: ShadingDeviceRow) -> Iterator[Problem]:
 
 
 SHADING_RULES: tuple[tuple[type[SheetRow], frozenset[str], Callable[[Any], Iterator[Problem]]], ...] = (
-    (ElementRow, frozenset({"faces", "obstruction"}), _element_in_the_sun),
     (
         ObstructionRow,
         frozenset(f"{part}_{what}" for part in ("overhang", "left_fin", "right_fin") for what in ("depth", "distance")),

@@ -2,18 +2,18 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Iterator
 from dataclasses import dataclass
 
 from heatledger.errors import Problem
 from heatledger.inputs.cells import Cell, Cells, reference
-from heatledger.inputs.columns import Column, SheetRow
-from heatledger.inputs.wording import nearest
+from heatledger.inputs.columns import SheetRow
+from heatledger.inputs.headings import Headings, find_fields
+from heatledger.inputs.titles import column_titles, title_of
+from heatledger.inputs.typed_numbers import is_number
+from heatledger.inputs.units import is_unit_of, unit_meant
 
-__all__ = ["Record", "Table", "read_labels", "read_table"]
-
-_ALIKE = 0.75
-"""Likeness from which a title or sheet is taken for a renamed one although it may be absent."""
+__all__ = ["Record", "Table", "header_row", "read_labels", "read_table"]
 
 
 @dataclass(frozen=True)
@@ -23,6 +23,8 @@ class Record:
     row: int
     cells: dict[str, Cell]
     positions: dict[str, int]
+    lost: frozenset[str] = frozenset()
+    """Fields whose title seems to have been changed: nothing is said of their cells."""
 
 
 @dataclass(frozen=True)
@@ -60,107 +62,65 @@ def read_table(model: type[SheetRow], cells: Cells) -> Table:
     """
     if not cells and not model.required_sheet:
         return Table()
-    header = _header_row(model, cells)
+    header = header_row(model, cells)
     if header is None:
         return Table(problems=(_no_header(model),), complete=False)
     titles = {column: cell for (row, column), cell in sorted(cells.items()) if row == header}
-    positions, twice = _positions(model, titles, header)
-    problems = [*twice, *_missing_titles(model, positions, titles.values())]
-    for field, column in positions.items():
+    found = find_fields(model, titles, lambda column: reference(header, column))
+    problems = [*found.problems]
+    for field, column in found.positions.items():
         problems += _changed_unit(model, field, cells.get((header - 1, column)), reference(header - 1, column))
-    return Table(tuple(_records(header, positions, cells)), tuple(problems), _complete(model, positions))
+    return Table(tuple(_records(model, header, found, cells)), tuple(problems), found.complete)
 
 
 def read_labels(model: type[SheetRow], cells: Cells) -> Table:
     """Read the one record of a sheet with labels in column A, values in column B and units in column C.
 
-    A label without value beside the same label with one is taken for a heading.
+    A label without value is taken for a heading where the same label stands again with one, or further down.
     """
-    fields = _fields(model)
     labels = {row: cell for (row, column), cell in sorted(cells.items()) if column == 1}
-    positions: dict[str, int] = {}
-    problems: list[Problem] = []
-    for row, cell in labels.items():
-        field = fields.get(_title(cell))
-        if field is None:
-            continue
-        if (positions.get(field, 0), 2) not in cells:
-            positions[field] = row
-        elif (row, 2) in cells:
-            problems.append(_twice(model, model.columns()[field], reference(row, 1)))
-    for field, row in positions.items():
+    with_value = {row: cell for row, cell in labels.items() if (row, 2) in cells}
+    without = {row: labels[row] for row in reversed(labels) if row not in with_value}
+    found = find_fields(model, {**with_value, **without}, lambda row: reference(row, 1), headings=without)
+    problems = [*found.problems]
+    for field, row in found.positions.items():
         problems += _changed_unit(model, field, cells.get((row, 3)), reference(row, 3))
-    problems += _missing_titles(model, positions, labels.values())
-    values = {field: cells[row, 2] for field, row in positions.items() if (row, 2) in cells}
-    return Table((Record(0, values, positions),), tuple(problems), _complete(model, positions))
+    values = {field: cells[row, 2] for field, row in found.positions.items() if (row, 2) in cells}
+    record = Record(0, values, found.positions, frozenset(found.lost))
+    return Table((record,), tuple(problems), found.complete)
 
 
-def _title(cell: Cell) -> str:
-    """A title without regard to case and to line breaks within it."""
-    return " ".join(str(cell.value).split()).casefold()
-
-
-def _fields(model: type[SheetRow]) -> dict[str, str]:
-    return {column.title.casefold(): field for field, column in model.columns().items()}
-
-
-def _header_row(model: type[SheetRow], cells: Cells) -> int | None:
+def header_row(model: type[SheetRow], cells: Cells) -> int | None:
     """Row that holds the first column's title or enough of the others; the fullest one, then the topmost."""
-    titles = _fields(model)
-    first = model.columns()[model.key()].title.casefold()
+    fields = column_titles(model)
     enough = max(2, sum(column.required for column in model.columns().values()) - 1)
     found: dict[int, set[str]] = {}
     for (row, _), cell in cells.items():
-        if _title(cell) in titles:
-            found.setdefault(row, set()).add(_title(cell))
-    candidates = [(len(words), -row) for row, words in found.items() if first in words or len(words) >= enough]
+        field = fields.get(title_of(cell).key)
+        if field:
+            found.setdefault(row, set()).add(field)
+    candidates = [(len(names), -row) for row, names in found.items() if model.key() in names or len(names) >= enough]
     return -max(candidates)[1] if candidates else None
 
 
-def _positions(model: type[SheetRow], titles: dict[int, Cell], header: int) -> tuple[dict[str, int], list[Problem]]:
-    """Column of every field, and the titles that stand twice."""
-    fields = _fields(model)
-    positions: dict[str, int] = {}
-    twice: list[Problem] = []
-    for column, cell in titles.items():
-        field = fields.get(_title(cell))
-        if field is None:
-            continue
-        if field in positions:
-            twice.append(_twice(model, model.columns()[field], reference(header, column)))
-        positions.setdefault(field, column)
-    return positions, twice
-
-
-def _complete(model: type[SheetRow], positions: dict[str, int]) -> bool:
-    return all(field in positions for field, column in model.columns().items() if column.required)
-
-
-def _records(header: int, positions: dict[str, int], cells: Cells) -> list[Record]:
-    fields = {column: field for field, column in positions.items()}
+def _records(model: type[SheetRow], header: int, titles: Headings, cells: Cells) -> Iterator[Record]:
+    """Rows that hold anything in a column of ours; a copy of the header row is none."""
+    fields: dict[int, list[str]] = {}
+    for field, column in titles.positions.items():
+        fields.setdefault(column, []).append(field)
     rows: dict[int, dict[str, Cell]] = {}
     for (row, column), cell in sorted(cells.items()):
         if row > header and column in fields:
-            rows.setdefault(row, {})[fields[column]] = cell
-    return [Record(row, found, positions) for row, found in rows.items()]
+            shared = fields[column]
+            rows.setdefault(row, {})[shared[-1] if _is_number(cell) else shared[0]] = cell
+    own, lost = column_titles(model), frozenset(titles.lost)
+    for row, found in rows.items():
+        if len(found) == 1 or any(own.get(title_of(cell).key) != field for field, cell in found.items()):
+            yield Record(row, found, titles.positions, lost)
 
 
-def _missing_titles(model: type[SheetRow], positions: dict[str, int], titles: Iterable[Cell]) -> list[Problem]:
-    """Required titles that are absent, and optional ones that seem to have been renamed."""
-    fields = _fields(model)
-    others = [" ".join(str(cell.value).split()) for cell in titles if _title(cell) not in fields]
-    absent = [column for field, column in model.columns().items() if field not in positions]
-    return [
-        _missing(model, column, nearest(column.title, others, 0.6 if column.required else _ALIKE))
-        for column in absent
-        if column.required or nearest(column.title, others, _ALIKE)
-    ]
-
-
-def _missing(model: type[SheetRow], column: Column, close: str) -> Problem:
-    hint = f"Rename '{close}' to '{column.title}'" if close else "Add it, or copy the titles from a fresh template"
-    expected = f"the {'label' if model.labelled else 'column'} {column.title}"
-    return Problem(f"no title '{column.title}'", expected, f"{hint}.", sheet=model.sheet, column=column.label)
+def _is_number(cell: Cell) -> bool:
+    return cell.kind == "number" or (cell.kind == "text" and is_number(str(cell.value)))
 
 
 def _no_header(model: type[SheetRow]) -> Problem:
@@ -169,23 +129,11 @@ def _no_header(model: type[SheetRow]) -> Problem:
     return Problem("no header row", f"a row with the titles {titles}", fix, sheet=model.sheet)
 
 
-def _twice(model: type[SheetRow], column: Column, cell: str) -> Problem:
-    found, fix = f"the title '{column.title}' a second time", "Rename or delete one of the two."
-    return Problem(found, "each title once", fix, sheet=model.sheet, cell=cell, column=column.label)
-
-
 def _changed_unit(model: type[SheetRow], field: str, unit: Cell | None, cell: str) -> list[Problem]:
-    """A unit typed over would be read wrongly."""
+    """A unit typed over would be read wrongly; any text that is no unit is left alone."""
     column = model.columns()[field]
     typed = str(unit.value).strip(" []") if unit and unit.kind == "text" else ""
-    if not column.unit or typed not in OTHER_UNITS or typed in column.unit.split(" or "):
+    if not column.unit or not unit_meant(typed) or is_unit_of(unit_meant(typed), column):
         return []
     found, fix = f"the unit '{typed}'", f"Convert the values to {column.unit} and restore the unit."
     return [Problem(found, f"'{column.unit}'", fix, sheet=model.sheet, cell=cell, column=column.label)]
-
-
-OTHER_UNITS = frozenset(
-    {"mm", "cm", "m", "m²", "m³", "ft", "in", "ft²", "ft³", "°C", "°F", "K", "%", "-", "W", "kW", "BTU/h"}
-    | {"W/(m·K)", "W/(m²·K)", "kJ/(m²·K)", "Wh/(m²·K)", "J/(kg·K)", "kJ/(kg·K)", "kg/m³", "lb/ft³", "1/h", "l/s"}
-)
-"""Units whose meaning is plain; any other text above a title is left alone."""

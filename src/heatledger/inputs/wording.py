@@ -4,29 +4,32 @@ from __future__ import annotations
 
 import math
 import re
-from collections.abc import Iterable
-from difflib import get_close_matches
+import unicodedata
+from collections.abc import Iterable, Sequence
+from datetime import date
+from difflib import SequenceMatcher, get_close_matches
+from functools import lru_cache
 from typing import cast
 
 from heatledger.inputs.cells import Cell
 from heatledger.inputs.columns import COMPASS, Column, plain
-from heatledger.inputs.words import MONTHS
+from heatledger.inputs.typed_numbers import mend_text
+from heatledger.inputs.words import MONTHS, OTHER_WORDS
 
 __all__ = [
-    "as_number",
+    "chosen_word",
     "compass_word",
     "describe",
+    "did_you_mean",
     "folded",
     "mend",
     "month_numbers",
     "nearest",
     "typed_name",
-    "unit_slip",
 ]
 
-_NUMBER_IN_TEXT = re.compile(r"^([-+−]?(?:\d+(?:[.,]\d+)?|[.,]\d+))\s*((?![\d.,]).*)$")
-_PERHAPS_THOUSANDS = re.compile(r"^[-+−]?[1-9]\d{0,2},\d{3}$")
 _MONTHS = tuple(name.casefold() for name in MONTHS)
+_MOST_OFFERED = 4
 _LONGEST = 60
 """Letters of a typed text that a sentence gives back."""
 
@@ -47,7 +50,7 @@ def describe(cell: Cell | None) -> str:
         case "boolean":
             return f"the logical value {str(cell.value).upper()}"
         case "date":
-            return f"the date {cell.value}"
+            return f"the {'time' if str(cell.value)[2:3] == ':' else 'date'} {cell.value}"
         case "error":
             return f"the error value {cell.value}"
         case "uncalculated":
@@ -63,46 +66,31 @@ def mend(cell: Cell, column: Column) -> str:
         case "uncalculated":
             return "Open and save the file in your spreadsheet program, then run again."
         case "date":
-            return f"Format the cell as {'a number' if of_numbers else 'text'} and type the value again."
+            meant = _before_it_was_a_date(str(cell.value), column)
+            likely = f": {meant}, if that was typed" if meant else ""
+            return f"Format the cell as {'a number' if of_numbers else 'text'} and type the value again{likely}."
         case "boolean":
-            return f"Type {column.expected}."
-    return _mend_text(str(cell.value), column)
+            word = chosen_word(str(cell.value), column.choices)
+            return f"Did you mean '{word}'?" if word else f"Type {column.expected}."
+    return mend_text(str(cell.value), column)
 
 
-def _mend_text(typed: str, column: Column) -> str:
-    """The way out for a text where a number belongs; a unit of another size is not dropped."""
-    number, unit = _split(typed)
-    if _PERHAPS_THOUSANDS.match(typed.strip()):
-        return f"Type {typed.strip().replace(',', '')} or {typed.strip().replace(',', '.')} as a number."
-    if number is None:
-        return "Type a number, without unit or words."
-    if not unit or unit in column.unit.split(" or "):
-        return f"Type {plain(number)} as a number."
-    if unit == "%" and column.unit == "-":
-        return f"Type {plain(number / 100)} as a number."
-    if column.unit in {"", "-"}:
-        return "Type a number, without unit or words."
-    return f"Convert it to {column.unit} and type the number alone."
+def _before_it_was_a_date(shown: str, column: Column) -> str:
+    """What a spreadsheet program took for a date or a time; empty if nothing is likely.
 
-
-def as_number(typed: str) -> float | None:
-    """Number that a text such as ``1,2``, ``12 mm`` or ``35 %`` most likely means.
-
-    None if it may mean two numbers: ``1,234`` is either 1.234 or 1234.
-
-    >>> as_number("1,2"), as_number("12 mm"), as_number("about 3"), as_number("1,234")
-    (1.2, 12.0, None, None)
+    >>> _before_it_was_a_date("2025-05-09", Column("Months", "months"))
+    '5-9 or 9-5'
     """
-    return _split(typed)[0]
-
-
-def _split(typed: str) -> tuple[float | None, str]:
-    """Number and unit of a text."""
-    match = _NUMBER_IN_TEXT.match(typed.strip())
-    if match is None or _PERHAPS_THOUSANDS.match(match[1]):
-        return None, ""
-    unit = match[2].strip(" []").replace("m2", "m²").replace("m3", "m³")
-    return float(match[1].replace(",", ".").replace("−", "-")), unit
+    if column.unit.startswith("h") and shown.endswith(":00:00"):
+        return str(int(shown[:2]))
+    try:
+        day = date.fromisoformat(shown)
+    except ValueError:
+        return ""
+    if column.kind == "months" and day.day <= 12:
+        return " or ".join(dict.fromkeys((f"{day.month}-{day.day}", f"{day.day}-{day.month}")))
+    point = column.kind == "number" and day.year >= 2000  # earlier ones are numbers in the format of a date
+    return f"{day.day}.{day.month}" if point else ""
 
 
 def compass_word(typed: str) -> str:
@@ -112,47 +100,9 @@ def compass_word(typed: str) -> str:
     ('SE', '')
     """
     letters = "".join(letter for letter in typed.upper() if letter.isalpha())
-    for word in ("NORTH", "EAST", "SOUTH", "WEST"):
-        letters = letters.replace(word, word[0])
+    for word in ("NORTH", "SOUTH", "WEST", "EAST", "NORD", "SÜD", "SUD", "OST"):
+        letters = letters.replace(word, word[0].replace("O", "E"))
     return letters if letters in COMPASS else ""
-
-
-_SLIPS: dict[str, tuple[tuple[float, str], ...]] = {
-    "m": ((1000, "mm"), (100, "cm")),
-    "mm": ((0.001, "m"),),
-    "-": ((100, "%"),),
-    "W/(m·K)": ((1000, "mW/(m·K)"),),
-}
-"""What a value is divided by if it was typed in another unit, by the unit of the column."""
-
-
-SHORTEST_IN_MILLIMETRES = 400.0
-"""Openings and edges shorter than this were rather typed in centimetres. [mm]"""
-
-
-def unit_slip(value: float, column: Column) -> str:
-    """Mend for a value out of bounds that was typed in another unit; empty if none explains it.
-
-    >>> unit_slip(1200.0, Column("Width", "number", "m", above=0, at_most=50))
-    'Type 1.2 if 1200 mm is meant.'
-    """
-    if column.unit == "°C" and _within((value - 32) / 1.8, column):
-        return f"Type {(value - 32) / 1.8:.1f} if {plain(value)} °F is meant."
-    for divisor, unit in _SLIPS.get(column.unit, ()):
-        if unit == "mm" and value < SHORTEST_IN_MILLIMETRES:
-            continue
-        if _within(value / divisor, column):
-            return f"Type {plain(value / divisor)} if {plain(value)} {unit} is meant."
-    return ""
-
-
-def _within(value: float, column: Column) -> bool:
-    return (
-        (column.above is None or value > column.above)
-        and (column.at_least is None or value >= column.at_least)
-        and (column.below is None or value < column.below)
-        and (column.at_most is None or value <= column.at_most)
-    )
 
 
 def month_numbers(typed: str) -> tuple[int, ...]:
@@ -185,14 +135,53 @@ def nearest(word: str, known: Iterable[str], likeness: float = 0.6) -> str:
     >>> nearest("Flat 11", ["Flat 1", "Stair"])
     'Flat 1'
     """
+    return next(iter(_alike(word, known, likeness)), "")
+
+
+def did_you_mean(word: str, known: Iterable[str], likeness: float = 0.6) -> str:
+    """A question for the known words that resemble the typed one most; empty without any, or with too many.
+
+    >>> did_you_mean("Flat 3", ["Flat 1", "Flat 2", "Stair"])
+    "Did you mean 'Flat 1' or 'Flat 2'?"
+    """
+    words = _alike(word, known, likeness)
+    offered = " or ".join(f"'{each}'" for each in words)
+    return f"Did you mean {offered}?" if 0 < len(words) < _MOST_OFFERED else ""
+
+
+def _alike(word: str, known: Iterable[str], likeness: float) -> list[str]:
+    """The known words that resemble a word most, in their order; several only if they do so equally."""
     by_folded = {folded(name): name for name in known}
-    close = get_close_matches(folded(word), by_folded, n=1, cutoff=likeness)
-    return by_folded[close[0]] if close else ""
+    typed = folded(word)
+    close = get_close_matches(typed, by_folded, n=_MOST_OFFERED, cutoff=likeness)
+    ratios = {name: SequenceMatcher(None, name, typed).ratio() for name in close}
+    return [name for key, name in by_folded.items() if key in ratios and ratios[key] == max(ratios.values())]
 
 
+def chosen_word(typed: str, words: Sequence[str]) -> str:
+    """The word of a short list that is meant by another one; empty if none is.
+
+    >>> chosen_word("external wall", ("wall", "roof")), chosen_word("unheated", ("heated", "unconditioned"))
+    ('wall', 'unconditioned')
+    """
+    bare = folded(typed)
+    other = [word for word in words if bare in OTHER_WORDS.get(word, ())]
+    within = [word for word in words if re.search(rf"\b{re.escape(word)}\b", bare)]
+    if other or within:
+        return (other or within)[0] if len(other or within) == 1 else ""
+    return nearest(typed, words)
+
+
+@lru_cache(maxsize=50_000)
 def folded(name: str) -> str:
-    """The form in which names are compared: without regard to case and outer spaces."""
-    return name.strip().casefold()
+    """The form in which names are compared: without regard to case, spaces, and what cannot be seen.
+
+    >>> folded(" Café\u00a0 1\u200b") == folded("CAFE\u0301 1")
+    True
+    """
+    usual = unicodedata.normalize("NFKC", name)
+    seen = usual if usual.isascii() else "".join(letter for letter in usual if unicodedata.category(letter) != "Cf")
+    return " ".join(seen.split()).casefold()
 
 
 def typed_name(cell: Cell) -> str:

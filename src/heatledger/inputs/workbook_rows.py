@@ -30,7 +30,7 @@ from heatledger.inputs.rows import (
     UsageRow,
     ZoneRow,
 )
-from heatledger.inputs.tables import Record, Table, read_labels, read_table
+from heatledger.inputs.tables import Record, Table, header_row, read_labels, read_table
 from heatledger.inputs.wording import folded, nearest
 
 __all__ = ["check_rows"]
@@ -76,7 +76,8 @@ def check_rows(sheets: Mapping[str, Cells], weather_check: Callable[[Rows], Iter
         collector.table(ThermalBridgeRow),
         collector.table(MonthlyClimateRow),
     )
-    typed = Typed(collector.records, frozenset(collector.unreadable))
+    absent = frozenset(model.sheet for model in SHEETS if folded(model.sheet) not in collector.sheets)
+    typed = Typed(collector.records, frozenset(collector.unreadable), absent)
     weather_problems = weather_check(rows) if names_weather else ()
     problems = [*weather_problems, *collector.problems, *check_names(typed), *cross_check(rows, typed)]
     if problems:
@@ -89,7 +90,8 @@ class _Collector:
 
     def __init__(self, sheets: Mapping[str, Cells]) -> None:
         self.sheets = {folded(name): cells for name, cells in sheets.items()}
-        self.others = [name for name in sheets if folded(name) not in {folded(model.sheet) for model in SHEETS}]
+        ours = {folded(model.sheet) for model in SHEETS}
+        self.others = {name: cells for name, cells in sheets.items() if folded(name) not in ours}
         self.problems: list[Problem] = []
         self.records: dict[str, Sequence[Record]] = {}
         self.unreadable: set[str] = set()
@@ -126,13 +128,21 @@ class _Collector:
         return table
 
 
-def _absent(model: type[SheetRow], others: Sequence[str]) -> Table:
-    renamed = nearest(model.sheet, others, 0.6 if model.required_sheet else 0.75)
+def _absent(model: type[SheetRow], others: Mapping[str, Cells]) -> Table:
+    renamed = nearest(model.sheet, others, 0.6 if model.required_sheet else 0.75) or _with_titles(model, others)
     if not model.required_sheet and not renamed:
         return Table()
     fix = f"Rename '{renamed}' to '{model.sheet}'." if renamed else "Copy it from a fresh template."
     problem = Problem("no such sheet", f"a sheet named {model.sheet}", fix, sheet=model.sheet)
     return Table(problems=(problem,), complete=False)
+
+
+def _with_titles(model: type[SheetRow], others: Mapping[str, Cells]) -> str:
+    """The first sheet of another name that has all the required titles."""
+    if model.labelled:
+        return ""
+    tables = ((name, read_table(model, cells)) for name, cells in others.items() if header_row(model, cells))
+    return next((name for name, table in tables if table.complete and table.records), "")
 
 
 def _place_order(problem: Problem) -> tuple[int, int, int, str]:

@@ -3,13 +3,16 @@
 from __future__ import annotations
 
 import re
+import string
 from collections.abc import Callable, Collection
-from dataclasses import dataclass
+from contextlib import suppress
+from dataclasses import dataclass, replace
 from datetime import datetime, timedelta
 from pathlib import Path
 
 from heatledger.errors import InputError, Problem
 from heatledger.inputs.cells import Cell, Cells, reference
+from heatledger.inputs.wording import folded
 from heatledger.workbook.gate import read_package, readable
 from heatledger.workbook.package import Package, SheetEntry, main, required
 from heatledger.workbook.references import global_markers
@@ -17,10 +20,13 @@ from heatledger.workbook.stream import Budget, StoredCell, hear_cells, hear_stri
 
 __all__ = ["owned_sheets", "read_cells"]
 
+FIRST_ROWS = 30
 MOST_ROWS = 20_000
 MOST_COLUMNS = 500
 MOST_CELLS = 1_000_000
 
+_UNSEEN = string.whitespace + "\xa0\xad\u200b\u200c\u200d\u2060\ufeff"
+"""White space and characters without width."""
 _NOT_A_DATE_PART = re.compile(r'"[^"]*"|\\.|_.|\*.|\[[^\]]*\]')
 _LONGEST_FORMAT = 255
 """Letters that spreadsheet programs allow in a number format."""
@@ -47,7 +53,8 @@ def read_cells(path: Path, wanted: Collection[str] | None = None) -> dict[str, C
         An .xlsx or .xlsm file.
     wanted : collection of str, optional
         Sheets to read, in any case; the others stand in the result without cells,
-        so a user's own large sheet costs nothing and meets no limit.
+        so a user's own large sheet costs nothing and meets no limit. Where a wanted
+        sheet is absent, the first rows of the others are read: one may be it, renamed.
 
     Raises
     ------
@@ -58,24 +65,23 @@ def read_cells(path: Path, wanted: Collection[str] | None = None) -> dict[str, C
     with readable(path):
         book = _Book(Budget(), _strings(package), *_dates(package))
         entries = _user_sheets(package)
-    only = None if wanted is None else {_folded(title) for title in wanted}
+    only = None if wanted is None else {folded(title) for title in wanted}
+    renamed = bool(only and only - {folded(entry.title) for entry in entries})
     sheets: dict[str, Cells] = {entry.title: {} for entry in entries}
     problems: list[Problem] = []
     room = MOST_CELLS
     for entry in entries:
-        if only is None or _folded(entry.title) in only:
+        if only is None or folded(entry.title) in only:
             try:
                 sheets[entry.title] = _sheet(path, package, entry, book, room)
                 room -= len(sheets[entry.title])
             except InputError as error:
                 problems += error.problems
+        elif renamed:
+            sheets[entry.title] = _first_rows(path, package, entry, book)
     if problems:
         raise InputError(problems)
     return sheets
-
-
-def _folded(title: str) -> str:
-    return title.strip().casefold()
 
 
 def _user_sheets(package: Package) -> list[SheetEntry]:
@@ -140,6 +146,26 @@ def _sheet(path: Path, package: Package, entry: SheetEntry, book: _Book, room: i
     return cells
 
 
+class _EnoughError(Exception):
+    """Ends the reading of a sheet early."""
+
+
+def _first_rows(path: Path, package: Package, entry: SheetEntry, book: _Book) -> Cells:
+    """What stands in the first rows of a sheet that need not be sound."""
+    cells: dict[tuple[int, int], Cell] = {}
+
+    def keep(row: int, column: int, stored: StoredCell) -> None:
+        if row > FIRST_ROWS:
+            raise _EnoughError
+        cell = _cell(stored, book)
+        if cell is not None and column <= MOST_COLUMNS:
+            cells[row, column] = cell
+
+    with suppress(_EnoughError, InputError), readable(path, entry.title):
+        hear_cells(package.parts[entry.part], replace(book.budget), keep)
+    return cells
+
+
 def _too_much(path: Path, sheet: str, row: int, column: int) -> Problem:
     found, limit = f"more than {MOST_CELLS:,} filled cells", f"at most {MOST_CELLS:,} in all sheets"
     if row > MOST_ROWS:
@@ -186,22 +212,26 @@ def _moment(serial: float, start: datetime) -> str:
 
 
 def _text(text: str, style: int, book: _Book) -> Cell | None:
-    return Cell(unescaped(text), "text") if text.strip() else None
+    return _visible(unescaped(text))
+
+
+def _visible(text: str) -> Cell | None:
+    """A text; none if nothing of it can be seen."""
+    return Cell(text, "text") if text.strip(_UNSEEN).strip() else None
 
 
 def _shared_text(text: str, style: int, book: _Book) -> Cell | None:
     index = int(text)
     if index < 0:
         raise IndexError("negative string index")
-    string = book.strings[index]
-    return Cell(string, "text") if string.strip() else None
+    return _visible(book.strings[index])
 
 
 _DECODE: dict[str, Callable[[str, int, _Book], Cell | None]] = {
     "n": _number,
     "s": _shared_text,
     "str": _text,
-    "inlineStr": lambda text, style, book: Cell(text, "text") if text.strip() else None,
+    "inlineStr": lambda text, style, book: _visible(text),
     "b": lambda text, style, book: Cell(text in {"1", "true"}, "boolean"),
     "e": lambda text, style, book: Cell(text, "error"),
     "d": lambda text, style, book: Cell(text.removesuffix("T00:00:00"), "date"),
