@@ -55,7 +55,7 @@ def test_new_never_overwrites_without_force(tmp_path: Path) -> None:
     refused = invoke("new", path)
     assert refused.exit_code == 1
     assert refused.stderr == (
-        "house.xlsx: found a file of this name; expected a new name. "
+        f"{path}: found a file of this name; expected a new name. "
         "Give another name, or overwrite the file with --force.\n1 problem; nothing was written.\n"
     )
     assert path.read_text() == "mine"
@@ -103,6 +103,7 @@ def test_run_into_another_file_leaves_the_workbook_alone(example: Path, tmp_path
         (("run", "{0}", "--json", "{0}"), "FILE and --json are the same file: {0}."),
         (("run", "{0}", "--output", "{1}", "--json", "{1}"), "--output and --json are the same file: {1}."),
         (("run", "{0}", "--report", "{2}"), "FILE and --report are the same file: {0}."),
+        (("run", "{0}", "--output", "{1}", "--report", "{1}"), "--output and --report are the same file: {1}."),
         (("check", "{0}", "--report", "{0}"), "FILE and --report are the same file: {0}."),
     ],
 )
@@ -123,13 +124,13 @@ def test_no_file_is_written_in_the_place_of_another(tmp_path: Path, arguments: t
         (
             "results.xlsx",
             "none/house.json",
-            "house.json: found that its folder does not exist; expected an existing folder. "
+            "{0}/none/house.json: found that its folder does not exist; expected an existing folder. "
             "Make the folder first, or give another name with --json.",
         ),
         (
             "none/results.xlsx",
             "house.json",
-            "results.xlsx: found that its folder does not exist; expected an existing folder. "
+            "{0}/none/results.xlsx: found that its folder does not exist; expected an existing folder. "
             "Make the folder first, or give another name with --output.",
         ),
         (".", "house.json", "{0}: found a folder; expected a file name. Give another name with --output."),
@@ -141,7 +142,7 @@ def test_workbook_and_json_are_written_both_or_none(
     result = invoke("run", example, "--output", tmp_path / output, "--json", tmp_path / figures)
     assert (result.exit_code, result.stderr) == (
         1,
-        f"{sentence.format(tmp_path.name)}\n1 problem; nothing was written.\n",
+        f"{sentence.format(tmp_path)}\n1 problem; nothing was written.\n",
     )
     assert list(tmp_path.iterdir()) == []
 
@@ -262,8 +263,9 @@ def test_quiet_and_verbose(example: Path, tmp_path: Path) -> None:
     quiet = invoke("run", example, "--output", target, "--quiet")
     assert (quiet.exit_code, quiet.output) == (0, "")
     told = invoke("run", target, "--verbose").stderr.splitlines()
-    assert told[0].startswith(f"Read {target} and weather ")
-    assert told[1] == f"Replaced sheets: {', '.join(RESULT_SHEETS)}."
+    assert told[0] == f"Read {target}."
+    assert told[1].startswith("Read weather Piedmont IT: PVGIS typical year ")
+    assert told[2] == f"Replaced sheets: {', '.join(RESULT_SHEETS)}."
     assert invoke("check", example, "--quiet").output == ""
 
 

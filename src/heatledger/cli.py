@@ -16,13 +16,19 @@ import click
 
 from heatledger import __version__
 from heatledger.errors import InputError, Problem
-from heatledger.terminal import Speaker, list_problems, shown, tell
+from heatledger.terminal import Speaker, list_problems, print_any_letter, shown, tell, with_paths
 
 if TYPE_CHECKING:
     from heatledger.results import Results
 
 __all__ = ["main"]
 
+INTERRUPTED = 130
+"""Exit status of what was stopped with Ctrl+C, as shells have it."""
+EXIT_STATUS = (
+    "Exit status: 0 done; 1 the workbook or the weather has problems, all of them listed, and nothing was written; "
+    "2 wrong use of the command; 130 stopped with Ctrl+C."
+)
 Command = TypeVar("Command", bound=Callable[..., Any])
 WORKBOOK = click.Path(path_type=Path)
 REPORT = click.option(
@@ -34,16 +40,25 @@ def _problems_to_exit_status(command: Command) -> Command:
     """List every problem on standard error and end with status 1."""
 
     @wraps(command)
-    def wrapped(*args: Any, **kwargs: Any) -> Any:
+    def wrapped(*args: Any, **kwargs: Any) -> None:
         _check_names(kwargs)
         report: Path | None = kwargs.pop("report", None)
+        paths = [path for path in kwargs.values() if isinstance(path, Path)]
         try:
-            return command(*args, **kwargs)
+            command(*args, **kwargs)
         except InputError as error:
-            list_problems(error.problems)
-            if report:
+            problems = with_paths(error.problems, paths)
+            if report is None:
+                list_problems(problems)
+            else:
+                list_problems(problems, "no results were written")
                 _write_report(kwargs["file"], error.problems, report)
             sys.exit(1)
+        except KeyboardInterrupt:
+            tell("Stopped. No file was left half written.")
+            sys.exit(INTERRUPTED)
+        if report and not kwargs["quiet"]:
+            click.echo("No report was written: there are no problems.")
 
     return cast("Command", wrapped)
 
@@ -75,12 +90,16 @@ def _write_report(file: Path, problems: Sequence[Problem], report: Path) -> None
     try:
         graft(file, build_problems_sheet(problems, file.name), report)
     except InputError as error:
-        for problem in error.problems:
-            if problem not in problems:
-                tell(str(problem))
+        for problem in with_paths([one for one in error.problems if one not in problems], [report]):
+            tell(str(problem))
         tell("No report was written.")
     else:
         tell(f"Wrote {shown(report)}: a copy with a sheet Problems.")
+
+
+def _tell_read(say: Speaker, file: Path, weather: str) -> None:
+    say.detail(f"Read {shown(file)}.")
+    say.detail(f"Read weather {weather}")
 
 
 def _how_much(command: Command) -> Command:
@@ -90,17 +109,18 @@ def _how_much(command: Command) -> Command:
     return quiet(verbose(command))
 
 
-@click.group(context_settings={"help_option_names": ["-h", "--help"]})
+@click.group(context_settings={"help_option_names": ["-h", "--help"]}, epilog=EXIT_STATUS)
 @click.version_option(__version__)
 def main() -> None:
-    r"""Monthly heating and cooling need of a building, from a filled-in workbook.
+    """Monthly heating and cooling need of a building, from a filled-in workbook.
 
     \b
     Example:
       heatledger new house.xlsx
       heatledger check house.xlsx
       heatledger run house.xlsx
-    """
+    """  # noqa: D301 - the backspace tells click to keep the lines
+    print_any_letter()
 
 
 @main.command()
@@ -109,47 +129,48 @@ def main() -> None:
 @click.option("--force", is_flag=True, help="Overwrite FILE if it exists.")
 @_problems_to_exit_status
 def new(file: Path, *, example: bool, force: bool) -> None:
-    r"""Write a blank workbook to fill in.
+    """Write a blank workbook to fill in.
 
     \b
     Example:
       heatledger new house.xlsx
       heatledger new example.xlsx --example
-    """
+    """  # noqa: D301 - the backspace tells click to keep the lines
     from heatledger.climate.shipped import shipped_climates
     from heatledger.inputs.prefilled import blank_values, example_values
     from heatledger.workbook.files import create
     from heatledger.workbook.template import build_template
 
     values = example_values() if example else blank_values()
-    create(file, build_template(values, shipped_climates()), force=force)
+    with Speaker().progress("Writing the workbook"):
+        create(file, build_template(values, shipped_climates()), force=force)
     click.echo(f"Wrote {shown(file)}.")
 
 
-@main.command()
+@main.command(epilog=EXIT_STATUS)
 @click.argument("file", type=WORKBOOK)
 @REPORT
 @_how_much
 @_problems_to_exit_status
 def check(file: Path, *, quiet: bool, verbose: bool) -> None:
-    r"""Read FILE and its weather and list every problem; nothing is calculated or written.
+    """Read FILE and its weather and list every problem; nothing is calculated or written.
 
     \b
     Example:
       heatledger check house.xlsx
       heatledger check house.xlsx --report house-problems.xlsx
-    """
+    """  # noqa: D301 - the backspace tells click to keep the lines
     from heatledger.assess import read_inputs
 
-    building, climate = read_inputs(file)
     say = Speaker(quiet=quiet, verbose=verbose)
-    for line in (f"Read {shown(file)}.", f"Read weather {climate.name}: {climate.source}"):
-        say.detail(line)
+    with say.progress("Reading"):
+        building, climate = read_inputs(file)
+    _tell_read(say, file, f"{climate.name}: {climate.source}")
     counts = f"{len(building.zones)} zones, {len(building.elements)} elements"
     say.result(f"{shown(file)}: no problems. {counts}, weather {climate.name}.")
 
 
-@main.command()
+@main.command(epilog=EXIT_STATUS)
 @click.argument("file", type=WORKBOOK)
 @click.option("--output", type=WORKBOOK, help="Write the workbook with results here and leave FILE as it is.")
 @click.option("--json", "json_file", type=WORKBOOK, help="Also write the results as JSON.")
@@ -157,24 +178,23 @@ def check(file: Path, *, quiet: bool, verbose: bool) -> None:
 @_how_much
 @_problems_to_exit_status
 def run(file: Path, *, output: Path | None, json_file: Path | None, quiet: bool, verbose: bool) -> None:
-    r"""Calculate the building in FILE and write the result sheets into it.
+    """Calculate the building in FILE and write the result sheets into it.
 
     \b
     Example:
       heatledger run house.xlsx
       heatledger run house.xlsx --output house-results.xlsx --json house.json
-    """
+    """  # noqa: D301 - the backspace tells click to keep the lines
     from heatledger.assess import assess
     from heatledger.workbook.graft import graft
     from heatledger.workbook.result_sheets import build_result_sheets
 
     say = Speaker(quiet=quiet, verbose=verbose)
     target = output or file
-    say.progress("Reading and calculating …")
-    results = assess(file)
-    say.detail(f"Read {shown(file)} and weather {results.climate.name}.")
-    say.progress("Writing the result sheets …")
-    with _json(results, json_file):
+    with say.progress("Reading and calculating"):
+        results = assess(file)
+    _tell_read(say, file, f"{results.climate.name}: {results.climate.source}")
+    with say.progress("Writing the result sheets"), _json(results, json_file):
         report = graft(file, build_result_sheets(results), target)
     if json_file:
         say.detail(f"Wrote {shown(json_file)}.")
@@ -192,23 +212,23 @@ def run(file: Path, *, output: Path | None, json_file: Path | None, quiet: bool,
 
 @main.group()
 def weather() -> None:
-    r"""Shipped climates.
+    """Shipped climates.
 
     \b
     Example:
       heatledger weather list
       heatledger weather show "Golden CO"
-    """
+    """  # noqa: D301 - the backspace tells click to keep the lines
 
 
 @weather.command("list")
 def weather_list() -> None:
-    r"""List the shipped climates.
+    """List the shipped climates.
 
     \b
     Example:
       heatledger weather list
-    """
+    """  # noqa: D301 - the backspace tells click to keep the lines
     from heatledger.climate.shipped import shipped_climates
 
     for name in shipped_climates():
@@ -219,15 +239,17 @@ def weather_list() -> None:
 @click.argument("name")
 @_problems_to_exit_status
 def weather_show(name: str) -> None:
-    r"""Print the twelve months of a shipped climate or of an hourly file.
+    """Print the twelve months of a shipped climate or of an hourly file.
 
     \b
     Example:
       heatledger weather show "Golden CO"
       heatledger weather show measured.epw
-    """
+    """  # noqa: D301 - the backspace tells click to keep the lines
     from heatledger.climate.files import open_climate
     from heatledger.climate.summary import summary_lines
 
-    for line in summary_lines(open_climate(name, Path())):
+    with Speaker().progress("Reading the weather"):
+        lines = summary_lines(open_climate(name, Path()))
+    for line in lines:
         click.echo(line)

@@ -5,6 +5,7 @@ The PVGIS and NSRDB forms follow files that come with the source distribution of
 
 from __future__ import annotations
 
+import gzip
 import json
 from collections.abc import Callable
 from pathlib import Path
@@ -15,6 +16,7 @@ import pvlib
 import pytest
 
 from heatledger.climate.files import open_climate
+from heatledger.climate.formats import read_climate
 from heatledger.climate.hourly import HourlyClimate
 from heatledger.errors import InputError
 
@@ -274,6 +276,22 @@ def test_a_tmy2_file_gives_the_shipped_climate() -> None:
 
 def test_lines_that_end_in_the_way_of_windows(opened: Opened, piedmont: HourlyClimate) -> None:
     assert_same_light(opened(pvgis_csv(piedmont).replace("\n", "\r\n")), piedmont)
+
+
+def test_an_empty_file(tmp_path: Path) -> None:
+    assert message("\n", tmp_path) == (
+        "mine.txt  Weather: found an empty file; expected an EPW, TMY3, TMY2, PVGIS or NSRDB file or an hourly table "
+        "of heatledger. Download the file again."
+    )
+
+
+def test_a_file_packed_by_gzip() -> None:
+    with pytest.raises(InputError) as caught:
+        read_climate(gzip.compress(b"LOCATION,"))
+    assert str(caught.value) == (
+        ": found a packed file (gzip); expected an EPW, TMY3, TMY2, PVGIS or NSRDB file or an hourly table of "
+        "heatledger. Unpack it and give the weather file inside."
+    )
 
 
 def test_a_packed_file(tmp_path: Path) -> None:

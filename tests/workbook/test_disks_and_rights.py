@@ -86,7 +86,7 @@ def test_a_full_disk_is_told(house: Path, small_disk: Path | None) -> None:
     else:
         path = house
         found = run_as("import resource; resource.setrlimit(resource.RLIMIT_FSIZE, (20_000, 20_000))", path, house)
-    assert found == (1, FULL)
+    assert found == (1, f"{path.parent}{os.sep}{FULL}")
     assert path.read_bytes() == before
     assert [name for name in os.listdir(path.parent) if name.endswith(".tmp")] == []
 
@@ -108,7 +108,7 @@ def test_missing_rights_are_told(house: Path, of_file: int, of_folder: int, sent
         folder.chmod(of_folder)
         try:
             other = "if os.geteuid() == 0: os.setgroups([]); os.setegid(65534); os.seteuid(65534)"
-            assert run_as(other, path, house) == (1, sentence)
+            assert run_as(other, path, house) == (1, f"{folder}{os.sep}{sentence}")
         finally:
             folder.chmod(0o755)
         path.chmod(0o644)
@@ -127,6 +127,7 @@ def test_a_file_that_another_program_holds_is_told(house: Path, monkeypatch: pyt
     with monkeypatch.context() as patched:
         patched.setattr(os if step == "replace" else Path, step, refuse)
         result = CliRunner().invoke(main, ["run", str(house)])
-    assert (result.exit_code, result.stderr) == (1, LOCKED if step == "replace" else UNREADABLE)
+    sentence = LOCKED if step == "replace" else UNREADABLE
+    assert (result.exit_code, result.stderr) == (1, f"{house.parent}{os.sep}{sentence}")
     assert house.read_bytes() == before
     assert os.listdir(house.parent) == ["house.xlsx"]

@@ -12,7 +12,7 @@ import pytest
 
 from heatledger.errors import InputError
 from heatledger.workbook import gate
-from heatledger.workbook.gate import check_package
+from heatledger.workbook.gate import read_package
 
 WORKBOOK = "expected an .xlsx or .xlsm workbook."
 SAVE_AS = "Open it in your spreadsheet program and save it as .xlsx."
@@ -25,7 +25,7 @@ Inject = Callable[[bytes, Mapping[str, bytes], Mapping[str, tuple[str, str]]], b
 
 def refusal(path: Path) -> str:
     with pytest.raises(InputError) as caught:
-        check_package(path)
+        read_package(path)
     assert len(caught.value.problems) == 1
     return str(caught.value)
 
@@ -50,7 +50,7 @@ def zipped(parts: Mapping[str, bytes]) -> bytes:
 
 def test_sound_workbooks_pass(book: Callable[[bytes], Path], plain_book: bytes, rich_book: bytes, donor: bytes) -> None:
     for data in (plain_book, rich_book, donor):
-        check_package(book(data))
+        read_package(book(data))
 
 
 def test_a_missing_file_is_named(tmp_path: Path) -> None:
@@ -202,14 +202,14 @@ def test_a_document_type_in_a_picture_or_a_text_is_no_danger(
 ) -> None:
     kind = ("</Types>", '<Default Extension="svg" ContentType="image/svg+xml"/></Types>')
     parts = {"xl/media/a.svg": b"<!DOCTYPE svg><svg/>", "customXml/item1.xml": b"<a><![CDATA[<!DOCTYPE a>]]></a>"}
-    check_package(book(inject(plain_book, parts, {"[Content_Types].xml": kind})))
+    read_package(book(inject(plain_book, parts, {"[Content_Types].xml": kind})))
 
 
 def test_a_document_type_is_sought_in_linear_time(
     book: Callable[[bytes], Path], plain_book: bytes, inject: Inject
 ) -> None:
     comments = b"<!-- -->" * 200_000 + b"<a/>"
-    check_package(book(inject(plain_book, {"customXml/item1.xml": comments}, {})))
+    read_package(book(inject(plain_book, {"customXml/item1.xml": comments}, {})))
 
 
 def test_unpacked_size_is_bounded_before_unpacking(
@@ -276,7 +276,7 @@ def test_any_flipped_bit_ends_in_a_sentence(book: Callable[[bytes], Path], plain
         data = bytearray(plain_book)
         data[chance.randrange(len(data))] ^= 1 << chance.randrange(8)
         try:
-            check_package(book(bytes(data)))
+            read_package(book(bytes(data)))
         except InputError:
             refused += 1
     assert refused > 200

@@ -17,6 +17,7 @@ ROOT = Path(__file__).parents[2]
 
 FORMATS = "an EPW, TMY3, TMY2, PVGIS or NSRDB file or an hourly table of heatledger"
 KIND = f"found a file of another kind; expected {FORMATS}. Give an hourly weather file of one of these formats."
+EMPTY = f"found an empty file; expected {FORMATS}. Download the file again."
 YEAR = "expected 8760 hours. Give a file of one whole year, 1 January to 31 December, one row for each hour."
 LONG = f"with a line of more than 20,000 letters; expected {FORMATS}. Download the file again."
 HEAD = b"LOCATION,Town,State,ABC,TMY,123456,40.0,-105.0,-7.0,1800.0\n"
@@ -28,9 +29,9 @@ def shipped(share: float) -> bytes:
 
 
 WEATHER: dict[str, tuple[bytes, str]] = {
-    "empty.epw": (b"", KIND),
+    "empty.epw": (b"", EMPTY),
     "binary.epw": (bytes(range(256)) * 400, KIND),
-    "spaces.txt": (b" " * 1000, KIND),
+    "spaces.txt": (b" " * 1000, EMPTY),
     "line.epw": (b"a" * 30_000_000, KIND),
     "head.epw": (HEAD, f"found 0 hours; {YEAR}"),
     "long line.epw": (HEAD + b"a," * 15_000_000, f"found an EPW file {LONG}"),

@@ -28,6 +28,9 @@ LONGEST_LINE = 20_000
 FORMATS = "an EPW, TMY3, TMY2, PVGIS or NSRDB file or an hourly table of heatledger"
 
 
+_PACKED = {b"PK\x03\x04": "zip) or a workbook", b"\x1f\x8b": "gzip)"}
+
+
 class _Format(NamedTuple):
     """What a kind of file is called, what it begins with, and its reader."""
 
@@ -64,9 +67,12 @@ def read_climate(content: bytes, moved: Callable[[Readings], Readings] = lambda 
     InputError
         If the format is unknown, the file cannot be read, or its year has faults.
     """
-    if content.startswith(b"PK\x03\x04"):
-        fix = "Unpack it and give the weather file inside."
-        raise InputError([Problem("a packed file (zip) or a workbook", FORMATS, fix)])
+    for beginning, kind in _PACKED.items():
+        if content.startswith(beginning):
+            fix = "Unpack it and give the weather file inside."
+            raise InputError([Problem(f"a packed file ({kind}", FORMATS, fix)])
+    if not content.strip():
+        raise InputError([Problem("an empty file", FORMATS, "Download the file again.")])
     text = decode(content)
     known = _format(text)
     if not text.lstrip().startswith("{") and max(map(len, text.split("\n"))) > LONGEST_LINE:

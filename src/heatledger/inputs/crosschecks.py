@@ -11,7 +11,7 @@ from heatledger.inputs.checking import problem_at
 from heatledger.inputs.columns import plain
 from heatledger.inputs.names import Typed
 from heatledger.inputs.prefilled import known_materials
-from heatledger.inputs.rowchecks import crossed_set_points, default_tilt, is_level
+from heatledger.inputs.rowchecks import METAL, crossed_set_points, default_tilt, is_level
 from heatledger.inputs.rows import NEIGHBOUR, OUTDOORS, BuildUpRow, Rows, ThermalBridgeRow, UsageRow, ZoneRow
 from heatledger.inputs.rules_build_ups import layers_together
 from heatledger.inputs.rules_glazed_units import frame_in_opening
@@ -118,10 +118,14 @@ def _layers(rows: Rows, typed: Typed) -> Iterator[Problem]:
 def _thin_layers(rows: Rows, typed: Typed) -> Iterator[Problem]:
     """Less than a millimetre of what is neither sheet nor foil was typed in metres."""
     materials = known_materials(rows)
+    thickest: dict[str, float] = defaultdict(float)
+    for layer in rows.build_ups:
+        thickest[folded(layer.name)] = max(thickest[folded(layer.name)], layer.thickness)
     for layer in rows.build_ups:
         material = materials.get(folded(layer.material))
-        bulky = material is not None and material.density is not None and material.density < LIGHTEST_SHEET
-        if bulky and layer.thickness < THINNEST:
+        density = material.density if material is not None else None
+        sheet = LIGHTEST_SHEET if thickest[folded(layer.name)] >= THINNEST else METAL  # no foil makes a whole wall
+        if density is not None and density < sheet and layer.thickness < THINNEST:
             found = f"{plain(layer.thickness)} mm of '{layer.material}'"
             fix = f"Type {plain(1000 * layer.thickness)} if {plain(layer.thickness)} m is meant."
             yield problem_at(layer, "thickness", found, "a thickness in millimetres", fix)

@@ -32,7 +32,7 @@ def create(target: Path, data: bytes, *, force: bool = False) -> None:
 
 
 def write_whole(
-    target: Path, data: bytes, verify: Callable[[Path], None] | None = None, elsewhere: str = _ELSEWHERE
+    target: Path, data: bytes, verify: Callable[[Path], object] | None = None, elsewhere: str = _ELSEWHERE
 ) -> None:
     """Write a file whole or not at all.
 
@@ -61,7 +61,7 @@ def write_whole(
 
 @contextmanager
 def staged(
-    target: Path, data: bytes, verify: Callable[[Path], None] | None = None, elsewhere: str = _ELSEWHERE
+    target: Path, data: bytes, verify: Callable[[Path], object] | None = None, elsewhere: str = _ELSEWHERE
 ) -> Iterator[None]:
     """As :func:`write_whole`, but the data take their place only when the body of the ``with`` has ended well."""
     place = Path(os.path.realpath(target))
@@ -105,7 +105,7 @@ def _is_there(path: Path) -> bool:
         return False
 
 
-def _fill(beside: Path, data: bytes, verify: Callable[[Path], None] | None, replaced: os.stat_result | None) -> None:
+def _fill(beside: Path, data: bytes, verify: Callable[[Path], object] | None, replaced: os.stat_result | None) -> None:
     with beside.open("xb") as file:
         file.write(data)
         file.flush()

@@ -16,7 +16,7 @@ from lxml import etree
 from heatledger.errors import InputError, Problem
 from heatledger.workbook.package import MAIN, TYPES_PART, Package, PartTooLargeError
 
-__all__ = ["check_package", "read_package", "readable"]
+__all__ = ["read_package", "readable"]
 
 LARGEST_UNPACKED = 200_000_000
 """Size of all parts together. [bytes]"""
@@ -31,17 +31,6 @@ _DOCTYPE = re.compile(rb"(?>\s+|<\?.*?\?>|<!--.*?-->)*+<!DOCTYPE", re.DOTALL)
 _LONGEST_PROLOGUE = 2_000_000
 """Bytes in which a document type is sought; behind them the parsers refuse it in what is read."""
 _BYTE_ORDER_MARKS = b"\xef\xbb\xbf\xff\xfe\0"
-
-
-def check_package(path: Path) -> None:
-    """Refuse what is no sound workbook.
-
-    Raises
-    ------
-    InputError
-        With the one problem that keeps the file from being read.
-    """
-    read_package(path)
 
 
 def read_package(path: Path) -> Package:

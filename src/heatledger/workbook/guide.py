@@ -31,8 +31,8 @@ STEPS = (
     "Then the build-ups and glazed units, the envelope with its openings, the ground floors and thermal bridges.",
     "Leave an optional cell empty to take its default. The results list every default that was used.",
     "Save the file, then type in a terminal:  heatledger check FILE  and, when nothing is left to mend,  "
-    "heatledger run FILE. The results come as new sheets of this workbook. Each run writes them anew, so keep remarks of "
-    "your own on other sheets.",
+    "heatledger run FILE. The results come as new sheets of this workbook. Each run writes them anew, so keep "
+    "remarks of your own on other sheets.",
     "You may move columns, add, sort and filter rows, and keep columns and sheets of your own. Keep the titles of "
     "ours.",
 )
