@@ -14,10 +14,10 @@ __all__ = ["is_number", "mend_text"]
 _NOTHING = {*"-–—?./", "--", "---", "n/a", "na", "n.a.", "n/k", "tbd", "tbc", "t.b.d.", "none", "nil", "unknown", "??"}
 """What stands for a value nobody knows yet."""
 _ABOUT = re.compile(r"^(?:approx(?:imately)?|about|circa|ca|max|min|[~≈±<>≤≥=]|\w{1,2}\s*=)[.:]?\s*(?=[\d.,+-])", re.I)
-_FIGURE = re.compile(r"^([-+]?)(\d[\d ,.']*\d|\d|[.,]\d+)(e[-+]?\d+)?\s*(.*)$", re.IGNORECASE)
+_FIGURE = re.compile(r"^([-+]?)((?>\d+(?:[,.']\d+| \d{3}(?!\d))*)|[.,]\d+)(e[-+]?\d+)?\s*((?![.,']\S).*)$", re.I)
 _GROUPED = re.compile(r"\d{1,3}([ ,.'])\d{3}(?:\1\d{3})*(?:(?!\1)[.,]\d+)?")
 _PLAIN = re.compile(r"\d*[.,]?\d+")
-_SEVERAL = re.compile(r"^(?:-|–|—|to|and|x|×|/|\+|;|\.\.+)\s*\d")
+_SEVERAL = re.compile(r"^(?:-|–|—|to|and|x|×|/|\+|;|)\s*\d")
 _REMARK = re.compile(r"^(?:\(.*\)|[?*!~]+|est\b.*|pcs\.?|pieces?|x|st|nd|rd|th|no\.?|\.)$", re.IGNORECASE)
 
 
@@ -54,7 +54,7 @@ def mend_text(typed: str, column: Column) -> str:
     found = _taken_apart(typed)
     if not found.figures:
         return "Type a number, without unit or words."
-    if _SEVERAL.match(found.rest):
+    if _SEVERAL.match(found.rest) and not unit_meant(found.rest):
         return "Type one number."
     if len(found.figures) > 1:
         return f"Type {' or '.join(found.figures)} as a number."

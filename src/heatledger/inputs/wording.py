@@ -30,6 +30,8 @@ __all__ = [
 
 _MONTHS = tuple(name.casefold() for name in MONTHS)
 _MOST_OFFERED = 4
+_MISSPELT = 0.75
+"""Likeness from which a word is a misspelt one rather than another that holds it."""
 _LONGEST = 60
 """Letters of a typed text that a sentence gives back."""
 
@@ -139,14 +141,16 @@ def nearest(word: str, known: Iterable[str], likeness: float = 0.6) -> str:
 
 
 def did_you_mean(word: str, known: Iterable[str], likeness: float = 0.6) -> str:
-    """A question for the known words that resemble the typed one most; empty without any, or with too many.
+    """A question for the known words that resemble the typed one most; empty without any.
 
     >>> did_you_mean("Flat 3", ["Flat 1", "Flat 2", "Stair"])
     "Did you mean 'Flat 1' or 'Flat 2'?"
     """
     words = _alike(word, known, likeness)
     offered = " or ".join(f"'{each}'" for each in words)
-    return f"Did you mean {offered}?" if 0 < len(words) < _MOST_OFFERED else ""
+    if len(words) == _MOST_OFFERED:
+        return f"Choose from the list of the cell, such as '{words[0]}'."
+    return f"Did you mean {offered}?" if words else ""
 
 
 def _alike(word: str, known: Iterable[str], likeness: float) -> list[str]:
@@ -166,10 +170,10 @@ def chosen_word(typed: str, words: Sequence[str]) -> str:
     """
     bare = folded(typed)
     other = [word for word in words if bare in OTHER_WORDS.get(word, ())]
+    near = [word for word in (nearest(typed, words, _MISSPELT),) if word]
     within = [word for word in words if re.search(rf"\b{re.escape(word)}\b", bare)]
-    if other or within:
-        return (other or within)[0] if len(other or within) == 1 else ""
-    return nearest(typed, words)
+    meant = other or near or within or [nearest(typed, words)]
+    return meant[0] if len(meant) == 1 else ""
 
 
 @lru_cache(maxsize=50_000)
