@@ -14,6 +14,7 @@ import gc
 import json
 import os
 import random
+import re
 import sys
 import tempfile
 import time
@@ -110,10 +111,8 @@ def _judge(name: str, data: bytes, path: Path, result: Result, count: Count) -> 
     ):
         shown = "".join(traceback.format_exception(*result.exc_info)) if result.exc_info else result.output
         count.tracebacks.append(f"{name}: exit status {result.exit_code}\n{shown[-3000:]}")
-    elif (
-        result.exit_code == 1
-        and "nothing was written" not in result.output
-        and "nothing was changed" not in result.output
+    elif result.exit_code == 1 and not re.search(
+        r"\d problems?; (nothing was|no results were) written\.", result.output
     ):
         count.tracebacks.append(f"{name}: no sentence\n{result.output[-3000:]}")
     if result.exit_code == 0:
