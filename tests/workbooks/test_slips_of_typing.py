@@ -7,6 +7,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING
 
 import pytest
+from openpyxl import load_workbook
 
 from heatledger.errors import InputError
 from heatledger.inputs.cells import Cell
@@ -326,4 +327,30 @@ def test_a_build_up_typed_in_metres_throughout(cottage: Book) -> None:
     assert problems[0] == (
         "Build-ups!D5  Thickness [mm]: found 0.25 mm of 'Brick'; expected a thickness in millimetres. "
         "Type 250 if 0.25 m is meant."
+    )
+
+
+def test_a_column_that_is_absent_is_told_rather_than_its_cells(cottage: Book) -> None:
+    assert cottage.change({"Envelope!H4": "Orientation"}).problems()[0] == (
+        "Envelope!A5  Azimuth [°]: found no such column; expected the direction of an element that faces outdoors. "
+        "Add the column Azimuth, or rename the one that stands for it."
+    )
+    assert cottage.change({"Envelope!H4": "Azimuth", "Envelope!E4": "Construction"}).problems()[0] == (
+        "Envelope!A5  Build-up: found neither a build-up nor a U-value; expected one of the two. "
+        "Add the column Build-up, or rename the one that stands for it."
+    )
+
+
+def test_merged_cells_are_told_as_such(cottage: Book, tmp_path: Path) -> None:
+    """They look filled; the cells of a remark below the table do not matter."""
+    path = cottage.save(tmp_path / "book.xlsx")
+    book = load_workbook(path)
+    book["Envelope"].merge_cells("B5:B6")
+    book["Envelope"].merge_cells("N20:P30")
+    book.save(path)
+    with pytest.raises(InputError) as caught:
+        check_rows(read_cells(path))
+    assert str(caught.value) == (
+        "Envelope!B6  Zone: found a cell merged with the one above; expected a name from sheet Zones. "
+        "Split the merged cells and fill in each."
     )

@@ -10,8 +10,8 @@ from typing import Literal, NamedTuple, TypeAlias
 
 __all__ = ["Cell", "CellKind", "Cells", "column_letters", "reference"]
 
-CellKind: TypeAlias = Literal["number", "text", "boolean", "date", "error", "uncalculated"]
-"""Kind of a stored value; ``uncalculated`` is a formula that has no stored value."""
+CellKind: TypeAlias = Literal["number", "text", "boolean", "date", "error", "uncalculated", "merged"]
+"""Kind of a stored value; ``uncalculated`` is a formula without one, ``merged`` a cell joined to one above it."""
 
 
 class Cell(NamedTuple):

@@ -87,8 +87,12 @@ def placed_row(model: type[Row], record: Record, values: Mapping[str, Any] | Non
 
 
 def problem_at(row: SheetRow, name: str, found: str, expected: str, fix: str) -> Problem:
-    """A problem placed on the cell of a row's field."""
-    return Problem(found, expected, fix, sheet=row.sheet, cell=row.cell(name), column=row.columns()[name].label)
+    """A problem placed on the cell of a row's field, or on the row's name where the field has no column."""
+    column = row.columns()[name]
+    if not row.has(name):
+        found = "no such column" if found == EMPTY else found
+        fix = f"Add the column {column.title}, or rename the one that stands for it."
+    return Problem(found, expected, fix, sheet=row.sheet, cell=row.cell(name), column=column.label)
 
 
 def meant_word(typed: str, words: tuple[str, ...]) -> str:
@@ -168,7 +172,7 @@ def _out_of_bounds(column: Column, cell: Cell) -> str:
 def _typed_value(cell: Cell, column: Column) -> tuple[object, str]:
     """Value of a cell for its column, and the mend if it cannot be read."""
     remark = column.kind == "text" and not column.required
-    if cell.kind in {"error", "uncalculated", "boolean"} or (cell.kind == "date" and not remark):
+    if cell.kind in {"error", "uncalculated", "merged", "boolean"} or (cell.kind == "date" and not remark):
         return None, mend(cell, column)
     match column.kind:
         case "number":

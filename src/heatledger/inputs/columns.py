@@ -257,6 +257,10 @@ class SheetRow(BaseModel):
         """Row of the sheet in which this row stands."""
         return self._row
 
+    def has(self, field: str) -> bool:
+        """Whether the sheet has a column for a field; taken for granted of a row without a place."""
+        return field in self._positions or not self._positions or self.labelled
+
     def cell(self, field: str = "") -> str:
         """Cell of a field, e.g. ``E8``; the first column's cell if the field has no column."""
         column = self._positions.get(field) or self._positions.get(self.key(), 1)

@@ -57,6 +57,8 @@ def describe(cell: Cell | None) -> str:
             return f"the error value {cell.value}"
         case "uncalculated":
             return "a formula without a stored value"
+        case "merged":
+            return "a cell merged with the one above"
 
 
 def mend(cell: Cell, column: Column) -> str:
@@ -67,6 +69,8 @@ def mend(cell: Cell, column: Column) -> str:
             return "Mend the formula or type the value."
         case "uncalculated":
             return "Open and save the file in your spreadsheet program, then run again."
+        case "merged":
+            return "Split the merged cells and fill in each."
         case "date":
             meant = _before_it_was_a_date(str(cell.value), column)
             likely = f": {meant}, if that was typed" if meant else ""

@@ -4,7 +4,8 @@ from __future__ import annotations
 
 import re
 import string
-from collections.abc import Callable, Collection
+from bisect import bisect_right
+from collections.abc import Callable, Collection, Iterable
 from contextlib import suppress
 from dataclasses import dataclass, replace
 from datetime import datetime, timedelta
@@ -16,7 +17,7 @@ from heatledger.inputs.wording import folded
 from heatledger.workbook.gate import read_package, readable
 from heatledger.workbook.package import Package, SheetEntry, main, required
 from heatledger.workbook.references import global_markers
-from heatledger.workbook.stream import Budget, StoredCell, hear_cells, hear_strings, unescaped
+from heatledger.workbook.stream import Budget, StoredCell, column_number, hear_cells, hear_strings, unescaped
 
 __all__ = ["owned_sheets", "read_cells"]
 
@@ -27,6 +28,7 @@ MOST_CELLS = 1_000_000
 
 _UNSEEN = string.whitespace + "\xa0\xad\u200b\u200c\u200d\u2060\ufeff"
 """White space and characters without width."""
+_RANGE = re.compile(r"([A-Z]{1,3})(\d{1,7}):[A-Z]{1,3}(\d{1,7})")
 _NOT_A_DATE_PART = re.compile(r'"[^"]*"|\\.|_.|\*.|\[[^\]]*\]')
 _LONGEST_FORMAT = 255
 """Letters that spreadsheet programs allow in a number format."""
@@ -142,8 +144,20 @@ def _sheet(path: Path, package: Package, entry: SheetEntry, book: _Book, room: i
         cells[row, column] = cell
 
     with readable(path, entry.title):
-        hear_cells(package.parts[entry.part], book.budget, keep)
-    return cells
+        ranges = hear_cells(package.parts[entry.part], book.budget, keep)
+    return cells | _merged(ranges, cells)
+
+
+def _merged(ranges: Iterable[str], cells: Cells) -> dict[tuple[int, int], Cell]:
+    """Empty cells that look filled, since they are merged with a filled one above in a row that holds more."""
+    rows = sorted({row for row, _ in cells})
+    found: dict[tuple[int, int], Cell] = {}
+    for match in filter(None, map(_RANGE.fullmatch, ranges)):
+        column, first, last = column_number(match[1]), int(match[2]), int(match[3])
+        if (first, column) in cells:
+            below = rows[bisect_right(rows, first) : bisect_right(rows, last)]
+            found |= {(row, column): Cell(None, "merged") for row in below}
+    return found
 
 
 class _EnoughError(Exception):

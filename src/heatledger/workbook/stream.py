@@ -10,10 +10,10 @@ from xml.parsers import expat
 
 from heatledger.workbook.package import PartTooLargeError, main
 
-__all__ = ["Budget", "StoredCell", "hear_cells", "hear_strings", "unescaped"]
+__all__ = ["Budget", "StoredCell", "column_number", "hear_cells", "hear_strings", "unescaped"]
 
-_DATA, _ROW, _CELL, _VALUE, _FORMULA, _INLINE, _STRING, _TEXT, _AID = (
-    main(tag)[1:] for tag in ("sheetData", "row", "c", "v", "f", "is", "si", "t", "rPh")
+_DATA, _ROW, _CELL, _VALUE, _FORMULA, _INLINE, _STRING, _TEXT, _AID, _MERGED = (
+    main(tag)[1:] for tag in ("sheetData", "row", "c", "v", "f", "is", "si", "t", "rPh", "mergeCell")
 )
 """Tags as the parser spells them: ``namespace}tag``. ``rPh`` holds reading aids of East Asian text."""
 _PIECE = 1_000_000
@@ -21,6 +21,7 @@ _PIECE = 1_000_000
 _ANY_ROW = re.compile(rb"<row[\s/>]")
 _EMPTY_ROW = re.compile(rb'<row r="\d+"[^<>]*/>')
 _LONGEST_TAG = 8_000_000
+_MOST_MERGED = 1000
 _ESCAPED = re.compile("_x([0-9A-Fa-f]{4})_")
 
 
@@ -44,9 +45,11 @@ StoredCell: TypeAlias = tuple[Mapping[str, str], str | None, bool]
 """Attributes of a cell, its stored text and whether it has a formula."""
 
 
-def hear_cells(data: bytes, budget: Budget, keep: Callable[[int, int, StoredCell], None]) -> None:
-    """Give row, column and content of every cell of a worksheet to ``keep``."""
-    _Cells(budget, keep).hear(_without_empty_rows(data))
+def hear_cells(data: bytes, budget: Budget, keep: Callable[[int, int, StoredCell], None]) -> list[str]:
+    """Give row, column and content of every cell of a worksheet to ``keep``; the ranges of merged cells."""
+    cells = _Cells(budget, keep)
+    cells.hear(_without_empty_rows(data))
+    return cells.merged
 
 
 def hear_strings(data: bytes, budget: Budget) -> list[str]:
@@ -148,11 +151,12 @@ class _Cells(_Hearer):
         self._attributes: dict[str, str] = {}
         self._stored: str | None = None
         self._formula = False
+        self.merged: list[str] = []
 
     def start(self, tag: str, attributes: dict[str, str]) -> None:
         if tag == _CELL:
             name = attributes.get("r")
-            self._column = _column(name) if name else self._column + 1
+            self._column = column_number(name) if name else self._column + 1
             self._attributes, self._stored, self._formula = attributes, None, False
         elif tag == _VALUE:
             self._words = []
@@ -182,13 +186,22 @@ class _Cells(_Hearer):
             super().end(tag)
 
     def _stop(self) -> None:
-        """Behind the rows nothing is of interest, but it has to be sound."""
-        self._parser.StartElementHandler = None
+        """Behind the rows only merged cells are of interest, but all has to be sound."""
+        self._parser.StartElementHandler = self._behind
         self._parser.EndElementHandler = None
         self._parser.CharacterDataHandler = None
 
+    def _behind(self, tag: str, attributes: dict[str, str]) -> None:
+        if tag == _MERGED and len(self.merged) < _MOST_MERGED:
+            self.merged.append(attributes.get("ref", ""))
 
-def _column(name: str) -> int:
+
+def column_number(name: str) -> int:
+    """Number of the column that a cell name begins with, counted from 1.
+
+    >>> column_number("AB12")
+    28
+    """
     column = 0
     for letter in name:
         if not "A" <= letter <= "Z":
