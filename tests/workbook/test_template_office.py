@@ -49,12 +49,16 @@ FAULTY: Values = {
     "Materials": [
         {"name": "Wool", "conductivity": 40, "density": 30},
         {"name": "Steel", "conductivity": 50, "density": 7800},
+        {"name": "Brick", "conductivity": 0.8, "density": 1800},
+        {"name": "Membrane", "conductivity": 0.22, "density": 270},
     ],
     "Build-ups": [
         {"name": "Wall", "layer": 1, "material": "Wool", "thickness": 0.1},
         {"name": "Wall", "layer": 1, "material": "Steel", "thickness": 0.7},
         {"name": "Wall", "layer": 2.5, "material": "Wol", "thickness": 9000, "second_share": 12},
         {"name": "Wall", "layer": 3, "material": "unventilated air layer", "thickness": 40, "second_material": "Steel"},
+        {"name": "Floor", "layer": 1, "material": "Brick", "thickness": 0.24},
+        {"name": "Floor", "layer": 2, "material": "Membrane", "thickness": 0.5},
     ],
     "Glazed units": [
         {"name": "Double", "u_value": 1.3, "g_value": 60, "frame_share": 0.3},
@@ -88,7 +92,7 @@ SLIPS = {
     "Usage": "C6 D6 O7",
     "Air systems": "F6",
     "Materials": "B6",
-    "Build-ups": "B6 B7 B8 C8 D6 D8",
+    "Build-ups": "B6 B7 B8 C8 D10 D6 D8",
     "Glazed units": "A6 A7 C6 D6",
     "Envelope": "B7 F8 H6",
     "Openings": "A6 A7 A8 C7 F7",

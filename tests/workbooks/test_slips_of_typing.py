@@ -317,19 +317,6 @@ def test_an_unknown_face_brings_no_problem_of_its_shade(cottage: Book) -> None:
     ]
 
 
-def test_a_build_up_typed_in_metres_throughout(cottage: Book) -> None:
-    """Brick of 0.25 mm alone may be no foil, though it is dense."""
-    wall = {at: value for at, value in cottage.sheets["Build-ups"].items() if value == "Wall"}
-    changes: Changes = {f"Build-ups!D{row}": 0.25 for row, _ in wall}
-    problems = cottage.change(changes).problems()
-
-    assert len(problems) == len(wall)
-    assert problems[0] == (
-        "Build-ups!D5  Thickness [mm]: found 0.25 mm of 'Brick'; expected a thickness in millimetres. "
-        "Type 250 if 0.25 m is meant."
-    )
-
-
 def test_a_column_that_is_absent_is_told_rather_than_its_cells(cottage: Book) -> None:
     assert cottage.change({"Envelope!H4": "Orientation"}).problems()[0] == (
         "Envelope!A5  Azimuth [°]: found no such column; expected the direction of an element that faces outdoors. "

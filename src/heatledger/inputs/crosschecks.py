@@ -11,8 +11,17 @@ from heatledger.inputs.checking import problem_at
 from heatledger.inputs.columns import plain
 from heatledger.inputs.names import Typed
 from heatledger.inputs.prefilled import known_materials
-from heatledger.inputs.rowchecks import METAL, crossed_set_points, default_tilt, is_level
-from heatledger.inputs.rows import NEIGHBOUR, OUTDOORS, BuildUpRow, Rows, ThermalBridgeRow, UsageRow, ZoneRow
+from heatledger.inputs.rowchecks import LIGHT, MOST_OF_LIGHT, MOST_OF_STONE, crossed_set_points, default_tilt, is_level
+from heatledger.inputs.rows import (
+    NEIGHBOUR,
+    OUTDOORS,
+    BuildUpRow,
+    MaterialRow,
+    Rows,
+    ThermalBridgeRow,
+    UsageRow,
+    ZoneRow,
+)
 from heatledger.inputs.rules_build_ups import layers_together
 from heatledger.inputs.rules_glazed_units import frame_in_opening
 from heatledger.inputs.rules_monthly_climate import monthly_climate_problems
@@ -22,9 +31,15 @@ from heatledger.inputs.wording import folded, nearest
 __all__ = ["cross_check", "default_tilt", "folded", "is_level"]
 
 THINNEST = 1.0
-"""[mm]"""
+"""No layer is thinner, but sheets, foils and membranes. [mm]"""
 LIGHTEST_SHEET = 800.0
-"""Sheets and foils thinner than a millimetre are denser. [kg/m³]"""
+"""Sheets and foils are denser, [kg/m³]"""
+MOST_OF_INSULATION = 0.1
+"""or woven, which is light and conducts more than light insulation does. [W/(m·K)]"""
+LIGHTEST_STONE = 1200.0
+"""Masonry, concrete, plaster and screed from this density on, [kg/m³]"""
+LEAST_OF_STONE = 0.35
+"""conduct more than plastics [W/(m·K)] and less than metals (``MOST_OF_STONE``)."""
 
 Check: TypeAlias = Callable[[Rows, Typed], Iterator[Problem]]
 
@@ -118,17 +133,22 @@ def _layers(rows: Rows, typed: Typed) -> Iterator[Problem]:
 def _thin_layers(rows: Rows, typed: Typed) -> Iterator[Problem]:
     """Less than a millimetre of what is neither sheet nor foil was typed in metres."""
     materials = known_materials(rows)
-    thickest: dict[str, float] = defaultdict(float)
-    for layer in rows.build_ups:
-        thickest[folded(layer.name)] = max(thickest[folded(layer.name)], layer.thickness)
     for layer in rows.build_ups:
         material = materials.get(folded(layer.material))
-        density = material.density if material is not None else None
-        sheet = LIGHTEST_SHEET if thickest[folded(layer.name)] >= THINNEST else METAL  # no foil makes a whole wall
-        if density is not None and density < sheet and layer.thickness < THINNEST:
+        if material is not None and layer.thickness < THINNEST and not _comes_thin(material):
             found = f"{plain(layer.thickness)} mm of '{layer.material}'"
             fix = f"Type {plain(1000 * layer.thickness)} if {plain(layer.thickness)} m is meant."
             yield problem_at(layer, "thickness", found, "a thickness in millimetres", fix)
+
+
+def _comes_thin(material: MaterialRow) -> bool:
+    """Whether a material may be a sheet, a foil or a membrane; nobody knows without its density."""
+    density, conductivity = material.density, material.conductivity
+    if density is None:
+        return True
+    if density < LIGHTEST_SHEET:
+        return density < LIGHT and MOST_OF_INSULATION < conductivity <= MOST_OF_LIGHT
+    return density < LIGHTEST_STONE or not LEAST_OF_STONE <= conductivity <= MOST_OF_STONE
 
 
 def _numbering(layers: list[BuildUpRow]) -> Iterator[Problem]:

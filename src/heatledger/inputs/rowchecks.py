@@ -28,7 +28,7 @@ from heatledger.inputs.rules_ground_floors import GROUND_FLOOR_RULES
 from heatledger.inputs.rules_shading import SHADING_RULES
 from heatledger.inputs.wording import folded
 
-__all__ = ["METAL", "check_row", "crossed_set_points", "default_tilt", "is_level"]
+__all__ = ["LIGHT", "MOST_OF_LIGHT", "MOST_OF_STONE", "check_row", "crossed_set_points", "default_tilt", "is_level"]
 
 LIGHT = 300.0
 """A material below it is no masonry, timber or metal. [kg/m³]"""

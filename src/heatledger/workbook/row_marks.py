@@ -10,8 +10,14 @@ from openpyxl.workbook.defined_name import DefinedName
 
 from heatledger.inputs.cells import column_letters
 from heatledger.inputs.columns import SheetRow, plain
-from heatledger.inputs.crosschecks import LIGHTEST_SHEET, THINNEST
-from heatledger.inputs.rowchecks import LIGHT, MOST_OF_LIGHT
+from heatledger.inputs.crosschecks import (
+    LEAST_OF_STONE,
+    LIGHTEST_SHEET,
+    LIGHTEST_STONE,
+    MOST_OF_INSULATION,
+    THINNEST,
+)
+from heatledger.inputs.rowchecks import LIGHT, MOST_OF_LIGHT, MOST_OF_STONE
 from heatledger.inputs.rows import (
     AirSystemRow,
     BuildUpRow,
@@ -35,6 +41,7 @@ _NAMED: dict[str, tuple[type[SheetRow], str]] = {
     "element_areas": (ElementRow, "area"),
     "material_names": (MaterialRow, "name"),
     "material_densities": (MaterialRow, "density"),
+    "material_conductivities": (MaterialRow, "conductivity"),
 }
 """Columns that formulas on other sheets need; conditional formats reach other sheets through names."""
 
@@ -42,6 +49,15 @@ _NEITHER = 'AND({build_up}="",{u_value}="",COUNTA({row})>0)'
 _BOTH = 'AND({build_up}<>"",{u_value}<>"")'
 _CROSSED = "AND(COUNT({heating_set_point},{cooling_set_point})=2,{heating_set_point}>{cooling_set_point})"
 _DENSITY = "INDEX(material_densities,MATCH(TRIM({material}),material_names,0))"
+_CONDUCTIVITY = "INDEX(material_conductivities,MATCH(TRIM({material}),material_names,0))"
+_LOOSE = (
+    f"AND({_DENSITY}>0,{_DENSITY}<{plain(LIGHTEST_SHEET)},"
+    f"OR({_DENSITY}>={plain(LIGHT)},{_CONDUCTIVITY}<={plain(MOST_OF_INSULATION)},{_CONDUCTIVITY}>{plain(MOST_OF_LIGHT)}))"
+)
+_STONE = (
+    f"AND({_DENSITY}>={plain(LIGHTEST_STONE)},"
+    f"{_CONDUCTIVITY}>={plain(LEAST_OF_STONE)},{_CONDUCTIVITY}<={plain(MOST_OF_STONE)})"
+)
 _OPENINGS = 'SUMPRODUCT(({element:}={element})*({count:}+({count:}=""))*{width:}*{height:})'  # an empty number is 1
 _UPRIGHT = (
     'IF({tilt}="",OR({kind}="wall",{kind}="door",{kind}="partition"),AND(ISNUMBER({tilt}),{tilt}<>0,{tilt}<>180))'
@@ -97,8 +113,7 @@ _SLIPS: _Marks = (
     (
         BuildUpRow,
         "thickness",
-        f"AND(N({{thickness}})>0,N({{thickness}})<{plain(THINNEST)},"
-        f"IFERROR(AND({_DENSITY}>0,{_DENSITY}<{plain(LIGHTEST_SHEET)}),FALSE))",
+        f"AND(N({{thickness}})>0,N({{thickness}})<{plain(THINNEST)},IFERROR(OR({_LOOSE},{_STONE}),FALSE))",
     ),
     (BuildUpRow, "layer", 'AND({layer}<>"",SUMPRODUCT((TRIM({name:})=TRIM({name}))*({layer:}={layer}))>1)'),
     (ElementRow, "u_value", _BOTH),
