@@ -30,7 +30,8 @@ EXIT_STATUS = (
     "2 wrong use of the command; 130 stopped with Ctrl+C."
 )
 Command = TypeVar("Command", bound=Callable[..., Any])
-WORKBOOK = click.Path(path_type=Path)
+WORKBOOK = click.Path(path_type=Path, readable=False)
+"""What may not be read is told as any other problem of a file."""
 REPORT = click.option(
     "--report", type=WORKBOOK, help="If there are problems, write a copy of FILE with a sheet that links to each."
 )
