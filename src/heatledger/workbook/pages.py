@@ -8,7 +8,9 @@ from typing import Any, cast
 from zipfile import ZIP_DEFLATED, ZIP_STORED, ZipFile, ZipInfo
 
 from openpyxl import Workbook
+from openpyxl.drawing.spreadsheet_drawing import SpreadsheetDrawing
 from openpyxl.styles import Font
+from openpyxl.worksheet._writer import WorksheetWriter
 from openpyxl.worksheet.header_footer import HeaderFooterItem
 from openpyxl.worksheet.properties import PageSetupProperties
 from openpyxl.worksheet.worksheet import Worksheet
@@ -72,7 +74,7 @@ def new_book() -> Workbook:
 def book_bytes(book: Workbook) -> bytes:
     """The file of a workbook, the same for the same content: dates and times are fixed."""
     saved, fixed = BytesIO(), BytesIO()
-    ExcelWriter(book, ZipFile(saved, "w", ZIP_STORED)).save()
+    _MemoryWriter(book, ZipFile(saved, "w", ZIP_STORED)).save()
     with ZipFile(saved) as source, ZipFile(fixed, "w") as target:
         for name in source.namelist():
             data = source.read(name)
@@ -82,3 +84,19 @@ def book_bytes(book: Workbook) -> bytes:
             entry.compress_type, entry.create_system = ZIP_DEFLATED, 0
             target.writestr(entry, data)
     return fixed.getvalue()
+
+
+class _MemoryWriter(ExcelWriter):
+    """Gathers the sheets in memory; openpyxl does so in temporary files, for which a full disk has no room."""
+
+    def write_worksheet(self, ws: Any) -> None:
+        """As the method it replaces, which types do not know from within."""
+        ws._drawing = SpreadsheetDrawing()
+        ws._drawing.charts, ws._drawing.images = ws._charts, ws._images
+        gathered = BytesIO()
+        inner: Any = self
+        writer: Any = WorksheetWriter(ws, gathered)
+        writer.write()
+        ws._rels = writer._rels
+        inner._archive.writestr(ws.path[1:], gathered.getvalue())
+        inner.manifest.append(ws)
