@@ -37,7 +37,7 @@ from heatledger.workbook.guide import CAUTIONS
 from heatledger.workbook.monthly import months_of_need
 from heatledger.workbook.printed import printed
 from heatledger.workbook.result_sheets import RESULT_SHEETS, build_result_sheets
-from heatledger.workbook.sheet_summary import LOSS_GROUPS
+from heatledger.workbook.summary_words import LOSS_GROUPS
 
 MONTHS = ["Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec"]
 OUTDOOR = np.array([1.2, 2.5, 6.0, 10.1, 14.6, 18.2, 19.6, 19.1, 15.4, 10.2, 5.3, 2.1])

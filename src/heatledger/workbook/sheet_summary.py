@@ -8,16 +8,7 @@ from dataclasses import replace
 import numpy as np
 from openpyxl.worksheet.worksheet import Worksheet
 
-from heatledger.results import (
-    BuildingResult,
-    ClimateResult,
-    ElementLoss,
-    Months,
-    Note,
-    ProjectResult,
-    Results,
-    label_of,
-)
+from heatledger.results import BuildingResult, ClimateResult, Months, ProjectResult, Results, label_of
 from heatledger.workbook.canvas import Canvas
 from heatledger.workbook.charts import BLUE, SKY, VERMILLION, Area, Bars, add_bars, add_columns
 from heatledger.workbook.guide import CAUTIONS
@@ -35,30 +26,18 @@ from heatledger.workbook.look import (
     TOTAL,
     Style,
 )
-from heatledger.workbook.monthly import conditioned, months_of_need, sum_of
+from heatledger.workbook.monthly import months_of_need
 from heatledger.workbook.pages import print_setup
-from heatledger.workbook.printed import ROUNDED, energy_digits, energy_text, shares_in_tenths
+from heatledger.workbook.printed import ROUNDED, energy_digits, energy_text
 from heatledger.workbook.sheet_notes import NOTES
+from heatledger.workbook.summary_words import drivers, headline, losses_by_kind, one_of_each_kind, second_look
 
-__all__ = ["LOSS_GROUPS", "write_summary"]
+__all__ = ["write_summary"]
 
 LAST = 14
 """Last column: a column of words, twelve months, the year."""
-LOSS_GROUPS = {
-    "wall": "Walls",
-    "roof": "Roofs",
-    "floor": "Floors",
-    "door": "Doors",
-    "partition": "Partitions",
-    "opening": "Openings",
-    "ground floor": "Ground floors",
-    "thermal bridge": "Thermal bridges",
-    "air leakage": "Air leakage",
-    "ventilation": "Ventilation",
-}
-"""Kinds of losses as the summary names them, in its order."""
-MOST_CHECKS, MOST_OF_A_CHECK = 3, 190
-"""Kinds of checks that the page quotes, and their characters; sheet Notes holds all of them."""
+MOST_CHECKS = 3
+"""Kinds of checks that the page quotes; sheet Notes holds all of them."""
 _PROJECT_TITLE = Style(bold=True, size=16, colour=SECTION.colour)
 _LABEL = Style(size=9, colour=SMALL.colour)
 _VALUE = Style(size=9)
@@ -115,20 +94,9 @@ def _entry(project: ProjectResult, field: str) -> tuple[str, str]:
 
 def _headline(canvas: Canvas, row: int, results: Results) -> None:
     """Row 7: what the page says, in one sentence."""
-    parts = [_need_in_words(results, field, word) for field, word in _NEEDS.items()]
-    text = f"Each year the building needs {parts[0]}, and {parts[1]}."
+    text = headline(results)
     canvas.merged(row, 1, LAST, text, _HEADLINE)
     canvas.height(row, canvas.fit_merged(row, 1, LAST, text, size=11, bold=True) + 12)
-
-
-def _need_in_words(results: Results, field: str, word: str) -> str:
-    building = results.building
-    need: Months = getattr(building, field)
-    year = float(np.sum(need))
-    if year <= 0:
-        return f"no {word}"
-    share = f"{year / building.floor_area:,.1f} kWh/m²"
-    return f"{energy_text(results, year)} kWh of {word} ({share}), most in {_FULL_MONTHS[int(np.argmax(need))]}"
 
 
 def _key_figures(canvas: Canvas, row: int, results: Results) -> None:
@@ -141,7 +109,7 @@ def _key_figures(canvas: Canvas, row: int, results: Results) -> None:
     canvas.height(row + 1, 16)
     for place, field in enumerate(("heating_need", "cooling_need"), start=row + 2):
         _figure_row(canvas, place, field, spans, results)
-    for place, sentence in enumerate(_sentences(results), start=row + 5):
+    for place, sentence in enumerate(drivers(results), start=row + 5):
         canvas.merged(place, 1, LAST, sentence or None, LONG)
         canvas.fit_merged(place, 1, LAST, sentence)
 
@@ -163,66 +131,10 @@ def _figure_row(canvas: Canvas, row: int, field: str, spans: Sequence[tuple[int,
 
 
 _HEAD_INDENTED = replace(HEAD, indent=1)
-_NEEDS = {"heating_need": "heating", "cooling_need": "cooling"}
-_FULL_MONTHS = (
-    *("January", "February", "March", "April", "May", "June"),
-    *("July", "August", "September", "October", "November", "December"),
-)
 _HEADLINE = replace(LONG, bold=True, size=11, vertical="center")
 _FIGURE = replace(NUMBER, bold=True, size=12, vertical="center")
 _NAME = Style(bold=True, border=BODY.border, vertical="center", wrap=False)
 _WORDS = Style(border=BODY.border, vertical="center", wrap=False, indent=1)
-
-
-def _sentences(results: Results) -> tuple[str, ...]:
-    return _largest_loss(results), _driver_of_heating(results), _driver_of_cooling(results), _neediest_zones(results)
-
-
-def _largest_loss(results: Results) -> str:
-    losses = [loss for loss in results.element_losses if not loss.between_zones]
-    if not losses:
-        return "Largest single loss: none, no zone is heated."
-    top = max(losses, key=lambda loss: loss.loss)
-    return (
-        f"Largest single loss: {top.name} ({top.kind}, {top.zone}), {energy_text(results, top.loss)} kWh a year, "
-        f"{top.share:.0f} % of the losses."
-    )
-
-
-def _driver_of_heating(results: Results) -> str:
-    groups = {title: share for title, _, share in _grouped(results.element_losses)}
-    if not any(groups.values()):
-        return "Main driver of heating: none."
-    title = max(groups, key=lambda name: groups[name])
-    return f"Main driver of heating: {title.lower()}, {groups[title]:.0f} % of the losses in months with heating."
-
-
-def _driver_of_cooling(results: Results) -> str:
-    """The larger of sun and internal gains while there is a need for cooling."""
-    zones = [zone for zone in conditioned(results) if np.nansum(zone.cooling_need) > 0]
-    season = results.building.cooling_need > 0
-    gains = {
-        "solar gains": float(np.sum(sum_of(zones, "solar_gains_cooling"), where=season)),
-        "internal gains": float(np.sum(sum_of(zones, "internal_gains"), where=season)),
-    }
-    total = sum(gains.values())
-    if total <= 0:
-        return "Main driver of cooling: none, there is no need for cooling."
-    name = max(gains, key=lambda key: gains[key])
-    share = 100 * gains[name] / total
-    return f"Main driver of cooling: {name}, {share:.0f} % of the gains of the cooled zones in months with cooling."
-
-
-def _neediest_zones(results: Results) -> str:
-    """Nothing to compare in a building of one zone."""
-    zones = conditioned(results)
-    parts = []
-    for field, word in _NEEDS.items():
-        needs = {zone.name: float(np.sum(getattr(zone, field))) / zone.floor_area for zone in zones}
-        name = max(needs, key=lambda zone: needs[zone], default="")
-        if name and needs[name] > 0:
-            parts.append(f"for {word} {name}, {needs[name]:,.1f} kWh/m² a year")
-    return f"Largest need per floor area: {'; '.join(parts)}." if parts and len(zones) > 1 else ""
 
 
 def _months(canvas: Canvas, row: int, results: Results) -> None:
@@ -247,26 +159,13 @@ def _months(canvas: Canvas, row: int, results: Results) -> None:
     add_columns(canvas.sheet, Area(row + 5, 1, row + 20, LAST), titles, Area.across(row + 1, 2, 13), series)
 
 
-def _grouped(losses: Sequence[ElementLoss]) -> list[tuple[str, float, float]]:
-    """Title, loss [kWh] and share of the sum [%] of each kind of loss, always in the same order.
-
-    What passes between conditioned zones is left out. Shares are rounded so that they add up to 100 as printed.
-    """
-    sums = dict.fromkeys(LOSS_GROUPS.values(), 0.0)
-    for loss in losses:
-        if not loss.between_zones:
-            sums[LOSS_GROUPS[loss.kind]] += loss.loss
-    shares = shares_in_tenths(list(sums.values()))
-    return [(title, loss, share) for (title, loss), share in zip(sums.items(), shares, strict=True)]
-
-
 def _losses(canvas: Canvas, row: int, results: Results) -> None:
     """Rows 39 to 54: the losses by kind and their chart."""
     _heading(canvas, row, "Where the heat goes in months with heating")
     canvas.put(row + 1, 1, "Loss", HEAD)
     canvas.merged(row + 1, 2, 3, "kWh a year", HEAD_NUMBER)
     canvas.merged(row + 1, 4, 5, "Share [%]", HEAD_NUMBER)
-    groups = _grouped(results.element_losses)
+    groups = losses_by_kind(results.element_losses)
     digits = energy_digits(results)
     for place, group in enumerate(groups, start=row + 2):
         _loss_row(canvas, place, group, (BODY, NUMBER), digits)
@@ -291,7 +190,7 @@ def _last_words(canvas: Canvas, row: int, results: Results) -> None:
     """From row 56: what to doubt, and the cautions."""
     _heading(canvas, row, "What to doubt")
     checks = [note for note in results.notes if note.kind == "check"]
-    quoted = _one_of_each_kind(checks)
+    quoted = one_of_each_kind(checks)
     for place in range(MOST_CHECKS):
         text = f"• {quoted[place]}" if place < len(quoted) else None
         canvas.merged(row + 1 + place, 1, LAST, text, _VALUE)
@@ -299,34 +198,13 @@ def _last_words(canvas: Canvas, row: int, results: Results) -> None:
         if text:
             canvas.fit_merged(row + 1 + place, 1, LAST, text, size=9)
     row += MOST_CHECKS + 1
-    cell = canvas.merged(row, 1, LAST, _second_look(len(checks)), replace(LINK, border=LONG.border) if checks else LONG)
+    cell = canvas.merged(row, 1, LAST, second_look(len(checks)), replace(LINK, border=LONG.border) if checks else LONG)
     canvas.link(cell, NOTES)
     canvas.height(row, 16)
     _heading(canvas, row + 1, "Cautions")
     for place, caution in enumerate((*CAUTIONS, f"Figures: {ROUNDED[0].lower()}{ROUNDED[1:]}"), start=row + 2):
         canvas.merged(place, 1, LAST, caution, SMALL)
         canvas.fit_merged(place, 1, LAST, caution, size=8.5)
-
-
-def _second_look(checks: int) -> str:
-    words = {0: "No figure asks for a second look.", 1: "1 check asks for a second look: see sheet Notes."}
-    return words.get(checks, f"{checks} checks ask for a second look: see sheet Notes.")
-
-
-def _one_of_each_kind(checks: Sequence[Note]) -> list[str]:
-    """The first check on each column of the workbook, with the number of others on it."""
-    alike: dict[tuple[str, str], list[Note]] = {}
-    for check in checks:
-        alike.setdefault((check.sheet, check.cell.rstrip("0123456789")), []).append(check)
-    return [
-        _short(first.text) + (f" And {len(others)} more like it." if others else "")
-        for first, *others in alike.values()
-    ]
-
-
-def _short(text: str) -> str:
-    """A check as far as two lines hold it."""
-    return text if len(text) <= MOST_OF_A_CHECK else text[: MOST_OF_A_CHECK - 1].rstrip() + "…"
 
 
 def _heading(canvas: Canvas, row: int, text: str) -> None:
