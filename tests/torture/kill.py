@@ -56,7 +56,7 @@ def run(path: Path) -> None:
 
 
 def writing_killed(base: Path, folder: Path, kills: int, chance: random.Random) -> Counter[str]:
-    """Kill a process that writes the result, and the same with a picture of 3 MB, over and over."""
+    """Kill a process that writes the result with the one and with the other picture of 3 MB, over and over."""
     from tests.torture.mutations import packed, unpacked
 
     from heatledger.workbook.files import write_whole
@@ -65,8 +65,9 @@ def writing_killed(base: Path, folder: Path, kills: int, chance: random.Random) 
     target = folder / "written.xlsx"
     target.write_bytes(base.read_bytes())
     run(target)
-    large = unpacked(target.read_bytes()) | {"xl/media/image9.png": random.Random(1).randbytes(3_000_000)}
-    versions = {target.read_bytes(): "small", packed(large): "large"}
+    parts = unpacked(target.read_bytes())
+    pictures = {"one": random.Random(1).randbytes(3_000_000), "other": random.Random(2).randbytes(3_000_000)}
+    versions = {packed(parts | {"xl/media/image9.png": picture}): name for name, picture in pictures.items()}
 
     def write_all() -> None:
         for data in versions:
@@ -78,7 +79,7 @@ def writing_killed(base: Path, folder: Path, kills: int, chance: random.Random) 
 
     write_all()
     span = 2.5 * took(write_all)
-    found: Counter[str] = Counter()
+    found = Counter(one=0, other=0, broken=0)
     for _ in range(kills):
         killed(write_for_ever, chance.uniform(0.0, span))
         found[versions.get(target.read_bytes(), "broken")] += 1
@@ -93,7 +94,7 @@ def runs_killed(base: Path, folder: Path, kills: int, chance: random.Random) -> 
     versions = {old: "old", target.read_bytes(): "new"}
     target.write_bytes(old)
     span = took(lambda: run(target))
-    found: Counter[str] = Counter()
+    found = Counter(old=0, new=0, broken=0)
     for _ in range(kills):
         target.write_bytes(old)
         killed(lambda: run(target), chance.uniform(0.5, 1.2) * span)
