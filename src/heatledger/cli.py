@@ -120,7 +120,7 @@ def main() -> None:
       heatledger new house.xlsx
       heatledger check house.xlsx
       heatledger run house.xlsx
-    """  # noqa: D301 - the backspace tells click to keep the lines
+    """
     print_any_letter()
 
 
@@ -136,7 +136,7 @@ def new(file: Path, *, example: bool, force: bool) -> None:
     Example:
       heatledger new house.xlsx
       heatledger new example.xlsx --example
-    """  # noqa: D301 - the backspace tells click to keep the lines
+    """
     from heatledger.climate.shipped import shipped_climates
     from heatledger.inputs.prefilled import blank_values, example_values
     from heatledger.workbook.files import create
@@ -160,7 +160,7 @@ def check(file: Path, *, quiet: bool, verbose: bool) -> None:
     Example:
       heatledger check house.xlsx
       heatledger check house.xlsx --report house-problems.xlsx
-    """  # noqa: D301 - the backspace tells click to keep the lines
+    """
     from heatledger.assess import read_inputs
 
     say = Speaker(quiet=quiet, verbose=verbose)
@@ -185,7 +185,7 @@ def run(file: Path, *, output: Path | None, json_file: Path | None, quiet: bool,
     Example:
       heatledger run house.xlsx
       heatledger run house.xlsx --output house-results.xlsx --json house.json
-    """  # noqa: D301 - the backspace tells click to keep the lines
+    """
     from heatledger.assess import assess
     from heatledger.workbook.graft import graft
     from heatledger.workbook.result_sheets import build_result_sheets
@@ -219,7 +219,7 @@ def weather() -> None:
     Example:
       heatledger weather list
       heatledger weather show "Golden CO"
-    """  # noqa: D301 - the backspace tells click to keep the lines
+    """
 
 
 @weather.command("list")
@@ -229,7 +229,7 @@ def weather_list() -> None:
     \b
     Example:
       heatledger weather list
-    """  # noqa: D301 - the backspace tells click to keep the lines
+    """
     from heatledger.climate.shipped import shipped_climates
 
     for name in shipped_climates():
@@ -246,7 +246,7 @@ def weather_show(name: str) -> None:
     Example:
       heatledger weather show "Golden CO"
       heatledger weather show measured.epw
-    """  # noqa: D301 - the backspace tells click to keep the lines
+    """
     from heatledger.climate.files import open_climate
     from heatledger.climate.summary import summary_lines
 

@@ -26,9 +26,8 @@ __all__ = ["FORMATS", "decode", "read_climate"]
 LONGEST_LINE = 20_000
 """An hour takes a few hundred letters; the readers take minutes over a line of millions."""
 FORMATS = "an EPW, TMY3, TMY2, PVGIS or NSRDB file or an hourly table of heatledger"
-
-
-_PACKED = {b"PK\x03\x04": "zip) or a workbook", b"\x1f\x8b": "gzip)"}
+_PACKED = {b"PK\x03\x04": "a packed file (zip) or a workbook", b"\x1f\x8b": "a packed file (gzip)"}
+"""What a file is that begins with these bytes."""
 
 
 class _Format(NamedTuple):
@@ -67,10 +66,9 @@ def read_climate(content: bytes, moved: Callable[[Readings], Readings] = lambda 
     InputError
         If the format is unknown, the file cannot be read, or its year has faults.
     """
-    for beginning, kind in _PACKED.items():
+    for beginning, packed in _PACKED.items():
         if content.startswith(beginning):
-            fix = "Unpack it and give the weather file inside."
-            raise InputError([Problem(f"a packed file ({kind}", FORMATS, fix)])
+            raise InputError([Problem(packed, FORMATS, "Unpack it and give the weather file inside.")])
     if not content.strip():
         raise InputError([Problem("an empty file", FORMATS, "Download the file again.")])
     text = decode(content)

@@ -39,7 +39,10 @@ MOST_OF_INSULATION = 0.1
 LIGHTEST_STONE = 1200.0
 """Masonry, concrete, plaster and screed from this density on, [kg/m³]"""
 LEAST_OF_STONE = 0.35
-"""conduct more than plastics [W/(m·K)] and less than metals (``MOST_OF_STONE``)."""
+"""conduct more than plastics [W/(m·K)] and less than metals (``MOST_OF_STONE``).
+
+All five: common practice, no source.
+"""
 
 Check: TypeAlias = Callable[[Rows, Typed], Iterator[Problem]]
 

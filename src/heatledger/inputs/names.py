@@ -11,7 +11,7 @@ from heatledger.inputs.columns import Column, SheetRow
 from heatledger.inputs.prefilled import shipped_materials
 from heatledger.inputs.rows import AIR_LAYERS, SHEETS, MaterialRow
 from heatledger.inputs.tables import Record
-from heatledger.inputs.wording import chosen_word, did_you_mean, folded, typed_name
+from heatledger.inputs.wording import did_you_mean, folded, typed_name
 from heatledger.inputs.words import IN_THE_GROUND, NEIGHBOUR, OTHER_WORDS, OUTDOORS
 
 __all__ = ["Typed", "check_names"]
@@ -104,9 +104,9 @@ def _likely(word: str, column: Column, known: Sequence[str]) -> str:
         return "Move it to sheet Ground floors, which also takes the walls of a basement."
     if folded(word) in {OUTDOORS, NEIGHBOUR}:
         return "Choose from the list of the cell."
-    meant = chosen_word(word, [fixed for fixed in column.choices if folded(word) in OTHER_WORDS.get(fixed, ())])
-    if meant:
-        return f"Did you mean '{meant}'?"
+    for fixed in column.choices:
+        if folded(word) in OTHER_WORDS.get(fixed, ()):
+            return f"Did you mean '{fixed}'?"
     shipped = [row.name for row in shipped_materials().values()] if column.names_from == MaterialRow.sheet else []
     return did_you_mean(word, known) or did_you_mean(word, shipped, 0.75)
 

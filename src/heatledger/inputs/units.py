@@ -25,7 +25,10 @@ _SIZES: dict[str, tuple[str, float]] = {
     **{"W/(m³/h)": ("W/(m³/h)", 1.0), "Wh/m³": ("W/(m³/h)", 1.0), "kW/(m³/s)": ("W/(m³/h)", 1 / 3.6)},
     **{"kWh/(m²·a)": ("kWh/(m²·a)", 1.0), "kWh/m²": ("kWh/m²", 1.0), "MJ/m²": ("kWh/m²", 1 / 3.6)},
 }
-"""What each unit measures, and its size."""
+"""What each unit measures, and its size.
+
+Inch, foot and pound are those of the agreement of 1959, Btu is that of steam tables.
+"""
 _SPELLINGS = {
     **{"qm": "m²", "sqm": "m²", "m2": "m²", "cbm": "m³", "ltr": "l", "litre": "l", "litres": "l"},
     **{'"': "in", "inch": "in", "inches": "in", "'": "ft", "feet": "ft", "foot": "ft", "sqft": "ft²", "cuft": "ft³"},

@@ -61,6 +61,7 @@ _SIGN_WIDTHS = {
     for sign in signs
 }
 """Widths of signs in digits of the body font, rounded to its classes; other small letters are as wide as a digit."""
+_SPACE = _SIGN_WIDTHS[" "]
 
 
 def text_width(text: str) -> float:
@@ -70,9 +71,6 @@ def text_width(text: str) -> float:
     (4.0, 3.2, 3.6)
     """
     return sum(_SIGN_WIDTHS.get(sign) or _other_width(sign) for sign in text)
-
-
-_SPACE = _SIGN_WIDTHS[" "]
 
 
 def _other_width(sign: str) -> float:
