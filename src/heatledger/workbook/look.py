@@ -36,7 +36,7 @@ __all__ = [
 
 FONT = "Arial"
 """Named for every cell: an unnamed font would take the theme of the workbook the sheets are put into."""
-INK, DARK, LIGHT, TINT, RULE, MUTED = "1A1A1A", "22384A", "DCE4EA", "FFF8E1", "B8C4CC", "55606A"
+INK, DARK, LIGHT, TINT, RULE, MUTED = "1A1A1A", "22384A", "DCE4EA", "F1EDF6", "B8C4CC", "55606A"
 
 MONTHS = ("Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec")
 
